@@ -1,0 +1,206 @@
+"""Findings: what a step of the checklist comes to, and the rules that judge a value against a limit."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import datetime
+from enum import StrEnum
+from math import pi
+from typing import Any
+
+from model.checks.term import Term
+from model.physics.formula import CONSTANTS
+
+CLOSE = 0.05
+"""A step that passes by less than this margin carries a caution."""
+
+
+class Verdict(StrEnum):
+    """What a step or a rig comes to; always shown as this word first."""
+
+    PASS = "PASS"
+    FAIL = "FAIL"
+    OPEN = "OPEN"
+    NOT_COUNTED = "NOT COUNTED"
+
+
+class Kind(StrEnum):
+    """How a step is settled: by the program or by somebody looking."""
+
+    COMPUTED = "computed"
+    INSPECTED = "inspected"
+
+
+@dataclass(frozen=True, slots=True)
+class StepUnit:
+    """The unit in which a step's value, limit and record stand, with its size in SI."""
+
+    text: str
+    dimension: str
+    size: float
+
+
+STEP_UNITS = {
+    unit.text: unit
+    for unit in (
+        StepUnit("kg", "mass", 1.0),
+        StepUnit("m", "length", 1.0),
+        StepUnit("m/s", "speed", 1.0),
+        StepUnit("N", "force", 1.0),
+        StepUnit("Pa", "pressure", 1.0),
+        StepUnit("s", "time", 1.0),
+        StepUnit("g0", "acceleration", CONSTANTS["g0"]),
+        StepUnit("deg", "angle", pi / 180),
+        StepUnit("d", "time", 86400.0),
+        StepUnit("yr", "time", 365.25 * 86400.0),
+        StepUnit("1", "number", 1.0),
+    )
+}
+
+
+@dataclass(frozen=True, slots=True)
+class Limit:
+    """A bound that a user set, in the step's unit, with its source. ``shown_in`` is the unit it was written in."""
+
+    minimum: float | None
+    maximum: float | None
+    source: str
+    shown_in: str | None = None
+
+    def holds(self, value: float) -> bool:
+        """Whether the value lies within the bounds, the bounds themselves included."""
+        above = self.minimum is None or value >= self.minimum
+        return above and (self.maximum is None or value <= self.maximum)
+
+    def margin(self, value: float) -> float | None:
+        """How far the value is from the nearer bound, as a share of that bound; negative exactly when it fails.
+
+        Bounds of different sign, or one of two bounds 0, are measured by half the distance between them. A lone bound
+        of 0 has no margin: None.
+        """
+        low, high = self.minimum, self.maximum
+        gaps = []
+        if low is not None:
+            gaps.append((value - low, abs(low)))
+        if high is not None:
+            gaps.append((high - value, abs(high)))
+        if low is not None and high is not None and low * high <= 0:
+            half = (high - low) / 2
+            gaps = [(gap, half) for gap, _ in gaps]
+        if not gaps or any(size == 0 for _, size in gaps):
+            return None
+        return min(gap / size for gap, size in gaps)
+
+
+@dataclass(frozen=True, slots=True)
+class Answer:
+    """The standing answer of an inspected step."""
+
+    answer: str
+    who: str
+    when: datetime
+    second: str = ""
+    remark: str = ""
+    value: str = ""
+    stale: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Inspection:
+    """What an inspected step asks, as the limit set writes it."""
+
+    ask: str
+    stage: str = ""
+    stop: bool = False
+    two_person: bool = False
+    wants_value: str = ""
+    caution: str = ""
+    covers: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Finding:
+    """The result of one step.
+
+    ``value`` and the bounds of ``limit`` are in ``unit`` (a key of `STEP_UNITS`, None for an inspected step).
+    ``result`` is the term that holds the value; the working is read from it. ``shown_in`` is the unit the user reads it
+    in when units are shown as written.
+    """
+
+    key: str
+    title: str
+    kind: Kind
+    group: str
+    verdict: Verdict
+    reason: str = ""
+    value: float | None = None
+    unit: str | None = None
+    limit: Limit | None = None
+    margin: float | None = None
+    cautions: tuple[str, ...] = ()
+    result: Term | None = None
+    shown_in: str | None = None
+    deviation: str | None = None
+    inspection: Inspection | None = None
+    answer: Answer | None = None
+    notes: tuple[str, ...] = ()
+
+    @property
+    def method(self) -> str:
+        """Name and source of the formula the value comes from."""
+        how = self.result.how if self.result else None
+        if how is None:
+            return ""
+        return f"{how.text}; {how.source}" if how.source else how.text
+
+
+@dataclass(frozen=True, slots=True)
+class Signature:
+    """A signature of the record, and whether the content changed since."""
+
+    who: str
+    when: datetime
+    stale: bool
+
+
+@dataclass(frozen=True, slots=True)
+class Checklist:
+    """All findings of one rig, in the order they are stepped through."""
+
+    file: str
+    name: str
+    reference: str
+    revision: int | None
+    limit_set: str
+    findings: tuple[Finding, ...]
+    digests: tuple[str, str] = ("", "")
+    signatures: tuple[Signature, ...] = ()
+    stale: tuple[str, ...] = ()
+    notes: tuple[str, ...] = ()
+    details: Any = None
+
+    @property
+    def verdict(self) -> Verdict:
+        """FAIL when any step fails, else OPEN when any is open, else PASS."""
+        return overall([finding.verdict for finding in self.findings])
+
+    def count(self, verdict: Verdict) -> int:
+        """How many steps came to a verdict."""
+        return sum(finding.verdict is verdict for finding in self.findings)
+
+    @property
+    def worst(self) -> Finding | None:
+        """The counted computed step with the least margin."""
+        counted = [
+            f for f in self.findings if f.margin is not None and f.verdict in (Verdict.PASS, Verdict.FAIL)
+        ]
+        return min(counted, key=lambda finding: finding.margin or 0.0, default=None)
+
+
+def overall(verdicts: list[Verdict]) -> Verdict:
+    """The verdict of several: FAIL over OPEN over PASS. Nothing counted at all is OPEN, never PASS."""
+    if Verdict.FAIL in verdicts:
+        return Verdict.FAIL
+    if Verdict.OPEN in verdicts or Verdict.PASS not in verdicts:
+        return Verdict.OPEN
+    return Verdict.PASS
