@@ -1,0 +1,100 @@
+"""Polynomials through Lobatto nodes, for many cases at once.
+
+A history is an array of shape (nodes, cases); a column holds one case. Nodes lie on x = -1..1; the fraction of a piece is
+tau = ((x + 1)/2)^grade, so that a grade above 1 crowds the nodes at the start, where fractional powers are not smooth.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import cache
+
+import numpy as np
+from numpy.polynomial import legendre
+from numpy.typing import NDArray
+
+Array = NDArray[np.float64]
+
+
+@dataclass(frozen=True, eq=False)
+class Lobatto:
+    """Constants of one set of nodes; theta = (x + 1)/2."""
+
+    x: Array
+    """Nodes, (nodes,)."""
+    tau: Array
+    """The same as fractions of the piece, (nodes, 1)."""
+    stretch: Array
+    """d tau / d theta, (nodes, 1)."""
+    integral: Array
+    """Node values -> integral over tau from 0 to each node, (nodes, nodes)."""
+    twice: Array
+    """Node values -> the integral of that integral."""
+    slope: Array
+    """Node values -> d / d theta."""
+    powers: Array
+    """Node values -> coefficients of a power series in x."""
+    last: Array
+    """Node values -> the last two Legendre coefficients, (2, nodes)."""
+    grade: int
+
+    def fraction(self, x: Array) -> Array:
+        """Tau at some x."""
+        theta = (x + 1) / 2
+        return theta**self.grade if self.grade > 1 else theta
+
+
+@cache
+def lobatto(nodes: int, grade: int = 1) -> Lobatto:
+    """The constants for so many nodes (at least 4) and a grade (1: even)."""
+    inner = legendre.Legendre.basis(nodes - 1).deriv().roots()
+    x = np.concatenate(([-1.0], np.sort(np.real(inner)), [1.0])).astype(float)
+    to_legendre: Array = np.linalg.inv(legendre.legvander(x, nodes - 1))
+    each = np.eye(nodes)
+    integral = np.stack([legendre.legval(x, legendre.legint(one, lbnd=-1)) for one in each], 1) @ to_legendre / 2
+    slope = np.stack([legendre.legval(x, legendre.legder(one)) for one in each], 1) @ to_legendre * 2
+    theta = (x + 1) / 2
+    tau, stretch = theta**grade, grade * theta ** (grade - 1)
+    integral = integral * stretch
+    powers = np.linalg.inv(np.vander(x, increasing=True))
+    return Lobatto(
+        x, tau[:, None], stretch[:, None], integral, integral @ integral, slope, powers, to_legendre[-2:].copy(), grade
+    )
+
+
+def power_table(x: Array, count: int) -> Array:
+    """Powers 0 .. count - 1 of x (cases,) as an array (count, cases)."""
+    table = np.empty((count, len(x)))
+    table[0] = 1
+    for i in range(1, count):
+        np.multiply(table[i - 1], x, out=table[i])
+    return table
+
+
+def dot(a: Array, b: Array) -> Array:
+    """Sums of products down the columns."""
+    result: Array = np.einsum("ij,ij->j", a, b)
+    return result
+
+
+def values_at(nodes: Lobatto, x: Array, *histories: Array) -> list[Array]:
+    """The node polynomials at one x per case; a history without nodes (constant in time) is passed through."""
+    weights = nodes.powers.T @ power_table(x, len(nodes.x))
+    return [dot(weights, history) if history.ndim == 2 else history for history in histories]
+
+
+def root_after(nodes: Lobatto, values: Array, left: NDArray[np.intp], steps: int = 3) -> Array:
+    """The x where a node polynomial is zero between node ``left`` and the next one, by Newton's method.
+
+    The answer never leaves that interval; where there is no change of sign it is some point of it.
+    """
+    case = np.arange(values.shape[1])
+    low, high = nodes.x[left], nodes.x[left + 1]
+    at_low, at_high = values[left, case], values[left + 1, case]
+    x = np.fmin(np.fmax(low + (high - low) * (at_low / (at_low - at_high)), low), high)
+    series = nodes.powers @ values
+    slopes = series[1:] * np.arange(1.0, len(series))[:, None]
+    for _ in range(steps):
+        table = power_table(x, len(series))
+        x = np.fmin(np.fmax(x - dot(series, table) / dot(slopes, table[:-1]), low), high)
+    return x

@@ -1,0 +1,67 @@
+"""Wind along the track as a function of height: layers with a constant slope, counted from the top."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from .inputs import Drop, as_array
+from .lobatto import Array
+
+
+@dataclass(frozen=True, eq=False)
+class Layer:
+    """The layer each case is in; its linear law may be used a little beyond its ends."""
+
+    level: Array
+    """m, altitude at which the wind is `speed`."""
+    speed: Array
+    """m/s."""
+    slope: Array | None
+    """1/s, growth with height; None where it is zero for all cases."""
+    bottom: Array
+    """m, altitude; -inf for the lowest layer."""
+
+    def at(self, z: Array) -> Array:
+        """Wind, m/s, at altitudes z, m."""
+        return self.speed if self.slope is None else self.speed + self.slope * (z - self.level)
+
+
+class Wind:
+    """All layers of all cases; (layers, cases)."""
+
+    def __init__(self, drop: Drop) -> None:
+        ground = as_array(drop.ground_altitude)
+        nothing = np.zeros_like(ground)
+        winds = drop.winds or ((nothing, nothing),)
+        heights = np.stack([as_array(height) for height, _ in reversed(winds)]) + ground
+        speeds = np.stack([as_array(speed) for _, speed in reversed(winds)])
+        thickness = heights[:-1] - heights[1:]
+        slopes = np.where(thickness > 0, (speeds[:-1] - speeds[1:]) / np.where(thickness > 0, thickness, 1), 0.0)
+        still = np.zeros((1, len(ground)))
+        self.tops = heights
+        self.levels = np.concatenate((heights, heights[-1:]))
+        self.speeds = np.concatenate((speeds, speeds[-1:]))
+        self.slopes = np.concatenate((still, slopes, still))
+        self.bottoms = np.concatenate((heights, still - np.inf))
+        self.sheared = bool(slopes.any())
+        self.calm_layer = Layer(ground, speeds[-1], None, nothing - np.inf)
+
+    def start(self, z: Array) -> NDArray[np.intp]:
+        """The layer just below altitudes z, m."""
+        return np.asarray((self.tops >= z - 1e-9).sum(0), np.intp)
+
+    def layer(self, index: NDArray[np.intp]) -> Layer:
+        """The layers of so many cases, by their numbers."""
+        if not self.sheared:
+            return self.calm_layer
+        case = np.arange(len(index))
+        slope = self.slopes[index, case]
+        found = slope if slope.any() else None
+        return Layer(self.levels[index, case], self.speeds[index, case], found, self.bottoms[index, case])
+
+    def at(self, z: Array) -> Array:
+        """Wind, m/s, at altitudes z (cases,), m."""
+        return self.layer(self.start(z)).at(z)
