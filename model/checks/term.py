@@ -34,7 +34,7 @@ class Term:
     """One value with its symbol, meaning, dimension and origin.
 
     ``value`` is in SI. ``unit`` is the unit the user wrote, if any. A given term has an ``origin``; a derived one has
-    ``how`` and its ``inputs``, in the order of the arguments.
+    ``how`` and its ``inputs``, in the order of the arguments. A ``caution`` goes with every step that uses the term.
     """
 
     value: float
@@ -47,6 +47,7 @@ class Term:
     inputs: tuple[Term, ...] = ()
     notes: tuple[str, ...] = ()
     tolerance: float = 0.0
+    caution: str = ""
 
     def again(self) -> float:
         """The value worked out anew from the inputs' values; a given term returns its value."""
@@ -63,9 +64,11 @@ def given(quantity: Quantity, symbol: str, meaning: str, origin: str) -> Term:
     )
 
 
-def known(value: float, symbol: str, meaning: str, dimension: str, origin: str) -> Term:
+def known(
+    value: float, symbol: str, meaning: str, dimension: str, origin: str, unit: str | None = None, caution: str = ""
+) -> Term:
     """A term from a table or a definition, in SI."""
-    return Term(value, symbol, meaning, dimension, None, origin)
+    return Term(value, symbol, meaning, dimension, unit, origin, caution=caution)
 
 
 def derive(
@@ -89,6 +92,10 @@ def derive(
     value = float(how.function(*(term.value for term in inputs)))
     meaning = f"{how.result.meaning}, {of}" if of else how.result.meaning
     return Term(value, symbol or how.result.text, meaning, how.result.dimension, unit, "", how, inputs, tuple(notes))
+
+
+SAME = Procedure("the line above", lambda value: value, "definition")
+LESS = Procedure("difference of the lines above", lambda whole, *parts: whole - sum(parts), "definition")
 
 
 def combine(
@@ -142,3 +149,8 @@ def lines(result: Term) -> Iterator[Term]:
         yield term
 
     yield from walk(result)
+
+
+def cautions(result: Term) -> tuple[str, ...]:
+    """The cautions of all terms that lead to ``result``, each once."""
+    return tuple(dict.fromkeys(term.caution for term in lines(result) if term.caution))

@@ -1,0 +1,145 @@
+"""A rig file in, a checklist out."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import replace
+from pathlib import Path
+
+from model.checks import inspected, registry
+from model.checks.case import Case
+from model.checks.finding import STEP_UNITS, Checklist, Finding, Limit, Signature, Verdict
+from model.checks.inputs import verify
+from model.checks.step import Ruling, Step, judge
+from model.rig import digest, record
+from model.rig.errors import InputError
+from model.rig.limits import Bounds, LimitSet, resolve
+from model.rig.reading import Loaded, load
+from model.rig.rig import TABLES
+
+
+def check(path: Path) -> Checklist:
+    """Read a rig with its limit set and its record, and check it.
+
+    Raises:
+        InputError: Where a file cannot be used; it holds every problem found.
+    """
+    loaded = load(path)
+    problems = []
+    try:
+        entries: Sequence[record.Entry] = record.read_record(record.record_path(path))
+    except InputError as error:
+        problems += error.problems
+        entries = ()
+    try:
+        checklist = check_loaded(loaded, entries)
+    except InputError as error:
+        problems += error.problems
+    if problems:
+        raise InputError(problems)
+    return checklist
+
+
+def check_loaded(loaded: Loaded, entries: Sequence[record.Entry] = ()) -> Checklist:
+    """Check a rig that has been read.
+
+    Raises:
+        InputError: For what only physics or the limit set can tell to be wrong.
+    """
+    rig_file, limits = loaded.rig, loaded.limits
+    rulings = _rulings(loaded)
+    verify(rig_file)
+    case = Case(rig_file.rig, limits.limits if limits else None)
+    limits_raw = limits.raw if limits else None
+    standings = record.standing(entries, rig_file.raw, limits_raw)
+    findings = [judge(step, case, rulings.get(step.limited_by, Ruling())) for step in registry.steps(case)]
+    if limits is not None:
+        findings += [inspected.find(one, standings.answers.get(one.key)) for one in limits.limits.inspection]
+    _known_parts(loaded, findings)
+    findings = [_left_out(finding, case) for finding in _ordered(findings)]
+    deviations = {key: one.entry.remark for key, one in standings.deviations.items()}
+    findings = [replace(one, deviation=deviations.get(one.key)) for one in findings]
+    return Checklist(
+        file=str(rig_file.path),
+        name=rig_file.rig.rig.name,
+        reference=rig_file.rig.rig.reference or "",
+        revision=rig_file.rig.rig.revision,
+        limit_set=limits.limits.set.name if limits else "",
+        findings=tuple(findings),
+        digests=(digest.rigging_digest(rig_file.raw, limits_raw), digest.full_digest(rig_file.raw, limits_raw)),
+        signatures=tuple(Signature(one.entry.who, one.entry.when, one.stale) for one in standings.signatures),
+        stale=tuple(key for key, one in standings.answers.items() if one.stale),
+        notes=_notes(limits.limits if limits else None),
+        details=case,
+    )
+
+
+def _notes(limits: LimitSet | None) -> tuple[str, ...]:
+    if limits is None:
+        return ("no limit set is named in the rig file: nothing can PASS",)
+    return (limits.set.note,) if limits.set.note else ()
+
+
+def _rulings(loaded: Loaded) -> Mapping[str, Ruling]:
+    """What the limit set says, by limit key, in step units."""
+    if loaded.limits is None:
+        return {}
+    bounds = resolve(loaded.limits, registry.dimension_of, registry.known_keys())
+    return {key: _ruling(key, one) for key, one in bounds.items()}
+
+
+def _ruling(key: str, bounds: Bounds) -> Ruling:
+    size = STEP_UNITS[registry.unit_of(key) or "1"].size
+    low = bounds.low.value / size if bounds.low else None
+    high = bounds.high.value / size if bounds.high else None
+    written = bounds.high or bounds.low
+    limit = Limit(low, high, bounds.source, written.unit) if written else None
+    return Ruling(limit, bounds.judged, bounds.needs_measured, bounds.source)
+
+
+def _ordered(findings: list[Finding]) -> list[Finding]:
+    """By group; in each first the stopping inspections, then what is computed, then the other inspections."""
+    order = list(registry.GROUP_TITLES)
+    order += [one.group for one in findings if one.group not in order]
+
+    def place(finding: Finding) -> tuple[int, int]:
+        asked = finding.inspection
+        return order.index(finding.group), 1 if asked is None else 0 if asked.stop else 2
+
+    return sorted(findings, key=place)
+
+
+def _tables_of(finding: Finding) -> tuple[str, ...]:
+    return next((step.tables for step in registry.FIXED if step.key == finding.key), ())
+
+
+def _known_parts(loaded: Loaded, findings: Sequence[Finding]) -> None:
+    """Refuse a left-out part that names no table, no group and no step."""
+    known = {*TABLES, *(one.group for one in findings), *(one.key for one in findings)}
+    problems = [
+        loaded.rig.problem(("left_out", i, "part"), f'"{one.part}"', "a table, a group of steps or a step key", _near(one.part, known))
+        for i, one in enumerate(loaded.rig.rig.left_out)
+        if one.part not in known
+    ]
+    if problems:
+        raise InputError(problems)
+
+
+def _near(part: str, known: set[str]) -> str:
+    from model.rig.fields import nearest
+
+    return nearest(part, sorted(known))
+
+
+def _left_out(finding: Finding, case: Case) -> Finding:
+    names = {finding.key, finding.group, *_tables_of(finding)}
+    for part in case.rig.left_out:
+        if part.part in names:
+            return replace(
+                finding, verdict=Verdict.NOT_COUNTED, reason=f"left out: {part.why}", value=None, margin=None, cautions=(),
+                result=None, notes=(),
+            )  # fmt: skip
+    return finding
+
+
+__all__ = ["Checklist", "Step", "check", "check_loaded"]

@@ -1,0 +1,167 @@
+"""Masses and the centre of gravity of a rig, as terms."""
+
+from __future__ import annotations
+
+from functools import cached_property
+
+from model.checks.missing import Missing, need, row
+from model.checks.term import LESS, SAME, Procedure, Term, combine, given, known, total
+from model.quantity import Quantity
+from model.rig.rig import Rig, along, plan_point
+
+SCALED = Procedure("count x mass of each", lambda mass, count: mass * count, "definition")
+MOMENTS = "sum of mass x coordinate / sum of mass"
+
+
+def _centre(*values: float) -> float:
+    half = len(values) // 2
+    masses, places = values[:half], values[half:]
+    return sum(m * x for m, x in zip(masses, places, strict=True)) / sum(masses)
+
+
+def _centre_without(*values: float) -> float:
+    mass, place, *rest = values
+    half = len(rest) // 2
+    gone, places = rest[:half], rest[half:]
+    return (mass * place - sum(m * x for m, x in zip(gone, places, strict=True))) / (mass - sum(gone))
+
+
+CENTRE = Procedure(MOMENTS, _centre, "statics")
+CENTRE_WITHOUT = Procedure(
+    "(mass x coordinate - sum of part mass x its coordinate) / (mass - sum of part masses)", _centre_without, "statics"
+)
+AXES = ("x", "y", "z")
+
+
+class Masses:
+    """What the parts of a rig weigh and where they lie. Every property raises `Missing` where a field is absent."""
+
+    def __init__(self, rig: Rig) -> None:
+        self.rig = rig
+        self.left_out = {entry.part for entry in rig.left_out}
+
+    @cached_property
+    def platform(self) -> Term | None:
+        """Mass of the platform; None where it is left out on purpose."""
+        if "platform" in self.left_out:
+            return None
+        platform = need(self.rig.platform, "platform")
+        return given(need(platform.mass, "platform.mass"), "m", "mass of the platform", "platform.mass")
+
+    @cached_property
+    def items(self) -> tuple[Term, ...]:
+        """Mass of each item."""
+        if not self.rig.item and "item" not in self.left_out:
+            raise Missing("item")
+        found = []
+        for i, item in enumerate(self.rig.item):
+            field = row("item", i, item.name, "mass")
+            found.append(given(need(item.mass, field), f"m{i + 1}", f"mass of {item.name}", field))
+        return tuple(found)
+
+    @cached_property
+    def canopies(self) -> tuple[Term, ...]:
+        """Mass of all canopies of each row."""
+        if not self.rig.canopy and "canopy" not in self.left_out:
+            raise Missing("canopy")
+        found = []
+        for i, one in enumerate(self.rig.canopy):
+            field = row("canopy row", i, one.role, "mass")
+            each = given(need(one.mass, field), f"mc{i + 1}", f"mass of one canopy of row {i + 1}", field)
+            if one.count == 1:
+                found.append(each)
+            else:
+                count = known(one.count, "N", "canopies of the row", "number", row("canopy row", i, one.role, "count"))
+                found.append(
+                    combine(SCALED, [each, count], f"mc{i + 1}", f"mass of the canopies of row {i + 1}", "mass", each.unit)
+                )
+        return tuple(found)
+
+    @cached_property
+    def extraction(self) -> Term | None:
+        """Mass of the extraction parachutes; None where there are none."""
+        extraction = self.rig.exit.extraction if self.rig.exit else None
+        if extraction is None or self.rig.exit is None or self.rig.exit.method != "extraction":
+            return None
+        mass = need(extraction.mass, "exit.extraction.mass")
+        return given(mass, "me", "mass of the extraction parachutes", "exit.extraction.mass")
+
+    @cached_property
+    def parts(self) -> Term:
+        """Sum of all parts."""
+        terms = [self.platform, *self.items, *self.canopies, self.extraction]
+        return total([term for term in terms if term], "Ms", "sum of the parts")
+
+    @cached_property
+    def weighed(self) -> Term | None:
+        """The scale's reading, if any."""
+        weighed = self.rig.platform.weighed if self.rig.platform else None
+        return given(weighed, "M", "rigged mass, weighed", "platform.weighed") if weighed else None
+
+    @cached_property
+    def rigged(self) -> Term:
+        """Rigged mass M: the scale's reading where there is one, else the sum of the parts."""
+        if self.weighed:
+            return self.weighed
+        parts = self.parts
+        return combine(SAME, [parts], "M", "rigged mass: nothing weighed, so the sum of the parts", "mass", parts.unit)
+
+    @cached_property
+    def falling(self) -> Term:
+        """Falling mass m: M less an extraction parachute that does not stay."""
+        rigged = self.rigged
+        extraction = self.rig.exit.extraction if self.rig.exit else None
+        if self.extraction is None or (extraction and extraction.stays):
+            return combine(SAME, [rigged], "m", "falling mass", "mass", rigged.unit)
+        return combine(LESS, [rigged, self.extraction], "m", "falling mass", "mass", rigged.unit)
+
+    @cached_property
+    def suspended(self) -> Term:
+        """Suspended mass m_s: the falling mass less the canopies."""
+        falling = self.falling
+        return combine(LESS, [falling, *self.canopies], "ms", "suspended mass", "mass", falling.unit)
+
+    def _places(self, axis: int, *, canopies: bool) -> tuple[list[Term], list[Term]]:
+        """Masses and one coordinate of platform, items and (or only) canopies."""
+        masses: list[Term] = []
+        places: list[Term] = []
+
+        def put(mass: Term, point: tuple[Quantity, Quantity, Quantity] | None, field: str, name: str) -> None:
+            masses.append(mass)
+            reading = need(point, field)[axis]
+            place = along(self.rig, reading) if axis == 0 else reading.value
+            places.append(known(place, AXES[axis], f"{AXES[axis]} of {name}", "length", field, reading.unit))
+
+        if not canopies:
+            if self.platform is not None:
+                put(self.platform, need(self.rig.platform, "platform").centre, "platform.centre", "the platform")
+            for i, (item, mass) in enumerate(zip(self.rig.item, self.items, strict=True)):
+                put(mass, item.centre, row("item", i, item.name, "centre"), item.name)
+        else:
+            for i, (one, mass) in enumerate(zip(self.rig.canopy, self.canopies, strict=True)):
+                put(mass, one.centre, row("canopy row", i, one.role, "centre"), f"canopy row {i + 1}")
+        return masses, places
+
+    def centre(self, axis: int) -> Term:
+        """One coordinate of the centre of gravity of platform, items and canopies."""
+        balanced = self.rig.platform.balanced_at if self.rig.platform else None
+        name = f"{AXES[axis]}G"
+        if balanced is not None and axis < 2:
+            place = plan_point(self.rig, balanced)[axis]
+            return known(place, name, "measured balance point", "length", "platform.balanced_at", balanced[axis].unit)
+        masses, places = self._places(axis, canopies=False)
+        more, further = self._places(axis, canopies=True)
+        return combine(CENTRE, [*masses, *more, *places, *further], name, "centre of gravity, canopies in", "length")
+
+    def centre_without_canopies(self, axis: int) -> Term:
+        """One coordinate of the centre of gravity of platform and items alone."""
+        name = f"{AXES[axis]}g"
+        balanced = self.rig.platform.balanced_at if self.rig.platform else None
+        if balanced is not None and axis < 2:
+            masses, places = self._places(axis, canopies=True)
+            parts = total([*([self.platform] if self.platform else []), *self.items, *self.canopies], "Mp", "parts in place")
+            terms = [parts, self.centre(axis), *masses, *places]
+            return combine(CENTRE_WITHOUT, terms, name, "centre of gravity without canopies", "length")
+        masses, places = self._places(axis, canopies=False)
+        return combine(CENTRE, [*masses, *places], name, "centre of gravity without canopies", "length")
+

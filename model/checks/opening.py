@@ -1,0 +1,160 @@
+"""Steps of the group opening: forces on canopies and lines while they fill."""
+
+from __future__ import annotations
+
+from model.checks.case import Case
+from model.checks.missing import CannotJudge, need
+from model.checks.rows import CanopyRow
+from model.checks.step import Outcome, Step, own_limit
+from model.checks.term import Term, derive, given, known, least
+from model.physics import strength
+from model.physics.formula import formula
+from model.physics.types import Real
+
+
+@formula(
+    "G = F/(m g0)",
+    result="G | opening load factor | number",
+    symbols={"force": "F | largest opening force | force", "mass": "m | falling mass | mass"},
+    source="definition",
+)
+def load_factor(force: Real, mass: Real) -> Real:
+    """Opening force over weight, in g0."""
+    return force / (mass * 9.80665)
+
+
+def _load_factor(case: Case) -> Outcome:
+    result = derive(load_factor, case.forces.opening, case.masses.falling)
+    return _outcome(case, result)
+
+
+def _outcome(case: Case, result: Term, measured: bool | None = None) -> Outcome:
+    forces = case.forces
+    rests = forces.measured_all() if measured is None else measured
+    return Outcome(result, cautions=forces.cautions, notes=forces.notes(), measured=rests)
+
+
+def canopy_share(case: Case, one: CanopyRow) -> Term:
+    """Load of the worst canopy of a row."""
+    return derive(strength.canopy_load, case.forces.of_row(one), one.count, one.uneven_share, of=one.name)
+
+
+def _canopy(case: Case) -> Outcome:
+    factors = []
+    for one in case.rows:
+        allowed = given(need(one.row.strength, one.field("strength")), "S", f"strength, {one.name}", one.field("strength"))
+        factors.append(derive(strength.strength_ratio, allowed, canopy_share(case, one), of=one.name))
+    return _outcome(case, least(factors, "k", "least strength/load over the rows"))
+
+
+def speed_at_stretch(case: Case, one: CanopyRow) -> Term:
+    """Equivalent airspeed at a row's line stretch, the larger of the rules."""
+    forces, motions = case.forces, case.motions
+    forces.must_open()
+    unit = one.row.rated_speed.unit if one.row.rated_speed else case.motions.indicated.unit
+    rule = max(
+        motions.rules, key=lambda name: float(motions.motion(name).line_stretch_equivalent_speed[one.index, 0])
+    )
+    return motions.flown(
+        rule, lambda motion: motion.line_stretch_equivalent_speed[one.index, 0], "Ve",
+        f"equivalent airspeed at line stretch, {one.name}", "speed", unit,
+    )  # fmt: skip
+
+
+def _speed(case: Case) -> Outcome:
+    """The row nearest to its own rated speed, or the fastest where none is rated."""
+    found = []
+    for one in case.rows:
+        term = speed_at_stretch(case, one)
+        rated = one.row.rated_speed
+        limits = (own_limit("m/s", f"rig file, {one.field('rated_speed')}", most=rated),) if rated else ()
+        nearest = limits[0].margin(term.value) if limits else None
+        found.append((nearest if nearest is not None else float("inf"), -term.value, term, limits))
+    _, _, term, limits = min(found, key=lambda entry: entry[:2])
+    unrated = [one.field("rated_speed") for one in case.rows if one.row.rated_speed is None]
+    cautions = tuple(f"no {field}: that row is judged by the limit set alone" for field in unrated) if limits else ()
+    return Outcome(term, limits, cautions=cautions, measured=case.forces.measured_all())
+
+
+def snatch_of(case: Case, one: CanopyRow) -> Term:
+    """Snatch force of one canopy of a row at line stretch."""
+    lines = need(one.row.lines, one.field("lines"))
+    count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
+    each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
+    stretch = given(need(lines.stretch, one.field("lines.stretch")), "eps", "stretch at break", one.field("lines.stretch"))
+    stiffness = derive(strength.line_stiffness, count, each, stretch, case.motions.line_length(one), of=one.name)
+    canopy_mass = given(need(one.row.mass, one.field("mass")), "mc", "mass of one canopy", one.field("mass"))
+    load_mass = derive(balance_share, case.masses.suspended, one.count)
+    reduced = derive(strength.reduced_mass, canopy_mass, load_mass)
+    return derive(strength.snatch_force, snatch_speed(case, one), stiffness, reduced, of=one.name)
+
+
+@formula(
+    "mL = ms/N",
+    result="mL | load on each canopy | mass",
+    symbols={"suspended": "ms | suspended mass | mass", "count": "N | canopies of the row | number"},
+    source="definition",
+)
+def balance_share(suspended: Real, count: Real) -> Real:
+    """Suspended mass for each canopy of a row, kg."""
+    return suspended / count
+
+
+def snatch_speed(case: Case, one: CanopyRow) -> Term:
+    """Load against canopy at line stretch: given, or for a static line the load against the aircraft."""
+    if one.row.snatch_speed is not None:
+        return given(one.row.snatch_speed, "dv", "load against canopy at line stretch", one.field("snatch_speed"))
+    leaving = case.exit
+    if one.index > 0 or leaving.canopy_pulled_by != "static line" or leaving.method == "extraction":
+        need(None, one.field("snatch_speed"))
+    return case.motions.flown(
+        case.motions.rules[0], lambda motion: motion.line_stretch_relative_speed[one.index, 0], "dv",
+        "load against the aircraft at line stretch", "speed",
+    )  # fmt: skip
+
+
+def _line_total(one: CanopyRow) -> Term:
+    lines = need(one.row.lines, one.field("lines"))
+    count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
+    each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
+    return derive(strength.line_strength, count, each, of=one.name)
+
+
+def _snatch(case: Case) -> Outcome:
+    case.forces.must_open()
+    factors = []
+    for one in case.rows:
+        snatch = snatch_of(case, one)
+        if snatch.value > 0:
+            factors.append(derive(strength.strength_ratio, _line_total(one), snatch, of=f"{one.name}, snatch"))
+    if not factors:
+        raise CannotJudge("no snatch: the load and the canopy move alike at line stretch")
+    return Outcome(least(factors, "k", "least line strength/snatch force"), measured=case.forces.measured_all())
+
+
+def line_share(case: Case, one: CanopyRow) -> Term:
+    """Load on one line of the worst canopy."""
+    lines = need(one.row.lines, one.field("lines"))
+    count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
+    angle = derive(strength.line_angle, one.diameter, case.motions.line_length(one), of=one.name)
+    if angle.value != angle.value:
+        raise CannotJudge(f"{one.name}: the lines are shorter than the mouth of the canopy is wide")
+    return derive(strength.line_load, case.forces.of_row(one), one.count, one.uneven_share, count, angle, of=one.name)
+
+
+def _line(case: Case) -> Outcome:
+    factors = []
+    for one in case.rows:
+        lines = need(one.row.lines, one.field("lines"))
+        each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
+        factors.append(derive(strength.strength_ratio, each, line_share(case, one), of=f"one line, {one.name}"))
+    return _outcome(case, least(factors, "k", "least line strength/share"))
+
+
+STEPS = (
+    Step("opening.load_factor", "Opening force over weight", "g0", _load_factor, tables=("canopy",)),
+    Step("opening.canopy", "Canopy strength over opening force", "1", _canopy, tables=("canopy",)),
+    Step("opening.speed", "Equivalent airspeed at line stretch", "m/s", _speed, tables=("canopy",)),
+    Step("opening.snatch", "Line strength over snatch force", "1", _snatch, tables=("canopy",)),
+    Step("opening.line", "Line strength over its share", "1", _line, tables=("canopy",)),
+)

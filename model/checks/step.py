@@ -1,0 +1,143 @@
+"""A step of the checklist and how its outcome is judged."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass, field
+
+from model.checks.case import Case
+from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Verdict
+from model.checks.missing import CannotJudge, Failed, Missing
+from model.checks.term import Term, cautions
+from model.quantity import Quantity
+
+
+@dataclass(frozen=True)
+class Outcome:
+    """What a computed step comes to before a limit is laid against it."""
+
+    result: Term
+    own_limits: tuple[Limit, ...] = ()
+    cautions: tuple[str, ...] = ()
+    notes: tuple[str, ...] = ()
+    fails: str = ""
+    measured: bool = False
+    opens: str = ""
+
+
+@dataclass(frozen=True)
+class Step:
+    """One computed step. ``limit_key`` names the limits that hold for it where it is not the key itself."""
+
+    key: str
+    title: str
+    unit: str
+    compute: Callable[[Case], Outcome] = field(repr=False)
+    for_information: bool = False
+    limit_key: str = ""
+    tables: tuple[str, ...] = ()
+
+    @property
+    def group(self) -> str:
+        """The part of the key before its first dot."""
+        return self.key.split(".", 1)[0]
+
+    @property
+    def limited_by(self) -> str:
+        """Key of the limit that holds for this step."""
+        return self.limit_key or self.key
+
+
+@dataclass(frozen=True)
+class Ruling:
+    """What the limit set says of a step: its limit, and whether it counts and needs a measured figure."""
+
+    limit: Limit | None = None
+    judged: bool = True
+    needs_measured: bool = False
+    source: str = ""
+
+
+def in_step_unit(term: Term, unit: str) -> float:
+    """A term's value in a step's unit; a plain number (a load factor, an age) stands in it already."""
+    known = STEP_UNITS[unit]
+    return term.value / known.size if term.dimension == known.dimension else term.value
+
+
+def own_limit(unit: str, source: str, least: Quantity | None = None, most: Quantity | None = None) -> Limit:
+    """A limit written in the rig file."""
+    size = STEP_UNITS[unit].size
+    shown = (most or least).unit if (most or least) else None  # type: ignore[union-attr]
+    return Limit(least.value / size if least else None, most.value / size if most else None, source, shown)
+
+
+def tighter(limits: list[Limit]) -> Limit | None:
+    """The tighter of several limits: the largest minimum and the smallest maximum."""
+    lows = [limit for limit in limits if limit.minimum is not None]
+    highs = [limit for limit in limits if limit.maximum is not None]
+    if not lows and not highs:
+        return None
+    low = max(lows, key=lambda limit: limit.minimum or 0.0, default=None)
+    high = min(highs, key=lambda limit: limit.maximum or 0.0, default=None)
+    binding = [limit for limit in (low, high) if limit is not None]
+    source = "; ".join(dict.fromkeys(limit.source for limit in binding))
+    return Limit(
+        low.minimum if low else None, high.maximum if high else None, source, binding[-1].shown_in
+    )
+
+
+def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
+    """Work a step out and lay its limit against it."""
+    try:
+        outcome = step.compute(case)
+    except Missing as missing:
+        return _without_value(step, ruling, Verdict.OPEN, f"data missing: {missing}")
+    except CannotJudge as reason:
+        return _without_value(step, ruling, Verdict.OPEN, str(reason))
+    except Failed as reason:
+        return _without_value(step, ruling, Verdict.FAIL, str(reason))
+    value = in_step_unit(outcome.result, step.unit)
+    limit = tighter([*outcome.own_limits, *([ruling.limit] if ruling.limit else [])])
+    margin = limit.margin(value) if limit else None
+    verdict, reason = _verdict(step, outcome, ruling, limit, value)
+    said = [*outcome.cautions, *cautions(outcome.result)]
+    if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:
+        said.insert(0, f"margin under {CLOSE:.0%}")
+    return Finding(
+        key=step.key, title=step.title, kind=Kind.COMPUTED, group=step.group, verdict=verdict, reason=reason, value=value,
+        unit=step.unit, limit=limit, margin=margin, cautions=tuple(dict.fromkeys(said)), result=outcome.result,
+        shown_in=(limit.shown_in if limit else None) or outcome.result.unit, notes=outcome.notes,
+    )  # fmt: skip
+
+
+def _verdict(step: Step, outcome: Outcome, ruling: Ruling, limit: Limit | None, value: float) -> tuple[Verdict, str]:
+    if not ruling.judged:
+        return Verdict.NOT_COUNTED, _unjudged(ruling)
+    if value != value:
+        return Verdict.OPEN, "no number comes out of these data"
+    if outcome.fails:
+        return Verdict.FAIL, outcome.fails
+    if outcome.opens:
+        return Verdict.OPEN, outcome.opens
+    if limit is None:
+        if step.for_information:
+            return Verdict.NOT_COUNTED, "for information: no limit set"
+        return Verdict.OPEN, "no limit set"
+    holds = limit.holds(value)
+    if ruling.needs_measured and not outcome.measured:
+        estimate = "the estimate is within the limit" if holds else "the estimate is outside the limit"
+        return Verdict.OPEN, f"needs a measured figure; {estimate}"
+    return (Verdict.PASS if holds else Verdict.FAIL), ""
+
+
+def _unjudged(ruling: Ruling) -> str:
+    return f"not judged: {ruling.source}" if ruling.source else "not judged: the limit set leaves it out"
+
+
+def _without_value(step: Step, ruling: Ruling, verdict: Verdict, reason: str) -> Finding:
+    if not ruling.judged:
+        verdict, reason = Verdict.NOT_COUNTED, f"{_unjudged(ruling)} ({reason})"
+    return Finding(
+        key=step.key, title=step.title, kind=Kind.COMPUTED, group=step.group, verdict=verdict, reason=reason,
+        unit=step.unit, limit=ruling.limit, shown_in=ruling.limit.shown_in if ruling.limit else None,
+    )  # fmt: skip
