@@ -259,12 +259,12 @@ def hold(rows: Sequence[Row]) -> Hold:
 
 
 def _pulls(index: int, row: Row) -> list[RowPull]:
-    if row.count < 1 or not min(row.device, row.deck_fitting, row.load_fitting) > 0.0:
+    if row.count < 1 or not all(0.0 < part < np.inf for part in (row.device, row.deck_fitting, row.load_fitting)):
         raise ValueError(f"lashing row {index + 1}: count and strengths must be over 0")
     run = np.subtract(row.deck, row.load)
     length = float(np.linalg.norm(run))
-    if not length > 0.0:
-        raise ValueError(f"lashing row {index + 1}: deck point and load point are one")
+    if not 0.0 < length < np.inf:
+        raise ValueError(f"lashing row {index + 1}: deck point and load point are one, or no points")
     vector = run / length * float(row_pull(row.count, row.device, row.deck_fitting, row.load_fitting))
     full = dict.fromkeys(DIRECTIONS, 1.0)
     made = [RowPull(index, False, row.kind, row.deck, row.ring, row.deck_fitting, vector, full)]
