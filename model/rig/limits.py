@@ -1,10 +1,10 @@
 """The limit set, format 1: what somebody allows, with its source, and what somebody has to look at."""
 
-from __future__ import annotations
-
 from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass
 from typing import Annotated, Any, TypeAlias
+
+from pydantic import Field
 
 from model.quantity import Dimension, Quantity, QuantityError
 from model.rig.errors import InputError
@@ -33,7 +33,7 @@ def _raw_bound(found: Any) -> str | float:
 
 
 def _covers(found: Any) -> tuple[str, ...]:
-    if not isinstance(found, list) or not found:
+    if not isinstance(found, list | tuple) or not found:
         raise FieldError(described(found) if found else "an empty list", "a list of tables of the rig file")
     for name in found:
         if name not in TABLES:
@@ -105,7 +105,7 @@ class LimitSet(Strict):
 
     format: Format = required("1")
     set: SetInfo = required("whose limits these are")
-    limits: dict[str, Limit] = rows("bounds by step key")
+    limits: dict[str, Limit] = Field(default_factory=dict, description="bounds by step key")
     restraint: Restraint | None = optional("what lashings have to hold")
     inspection: tuple[Inspection, ...] = rows("what has to be looked at")
 
@@ -136,7 +136,7 @@ class Bounds:
     needs_measured: bool
 
 
-def limit_faults(limits: LimitSet) -> Iterator[Fault]:
+def limit_faults(limits: LimitSet, lost: frozenset[str] = frozenset()) -> Iterator[Fault]:
     """Every contradiction within a limit set; a field that was lost is None here."""
     for key, limit in limits.limits.items():
         given = limit.model_fields_set

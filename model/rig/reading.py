@@ -104,7 +104,7 @@ def load(path: Path | str, known_parts: KnownParts | None = None) -> Loaded:
 
 
 def _rig(file: TomlFile, known_parts: KnownParts | None) -> RigFile:
-    rig = validate(file, Rig, lambda rig: rig_faults(rig, known_parts))
+    rig = validate(file, Rig, lambda rig, lost: rig_faults(rig, lost, known_parts))
     return RigFile(file.path, file.text, file.raw, rig, _limits_path(file))
 
 

@@ -23,11 +23,14 @@ LENGTH_MISFIT = 0.01
 _NAMED = ("item", "leg", "link", "cushion", "lashing", "tie", "device")
 
 
-def rig_faults(rig: Rig, known_parts: Callable[[str], bool] | None = None) -> Iterator[Fault]:
+def rig_faults(
+    rig: Rig, lost: frozenset[str] = frozenset(), known_parts: Callable[[str], bool] | None = None
+) -> Iterator[Fault]:
     """Every contradiction between fields of a rig.
 
     Args:
         rig: the rig; lost fields are None.
+        lost: tables that could not be read at all.
         known_parts: whether a `left_out` part names a group of steps or a step; without it any name may stand.
     """
     yield from _repeated_names(rig)
@@ -35,7 +38,7 @@ def rig_faults(rig: Rig, known_parts: Callable[[str], bool] | None = None) -> It
     yield from _air(rig)
     yield from _exit(rig)
     yield from canopy_faults(rig.canopy)
-    yield from _packs(rig)
+    yield from _packs(rig, "canopy" in lost)
     yield from _readings(rig)
     yield from _hanging(rig)
     yield from _cushions(rig)
@@ -99,22 +102,21 @@ def _exit(rig: Rig) -> Iterator[Fault]:
             yield Fault(("exit",), "extraction without line_stretch", "line_stretch, the known time from release")
 
 
-def _packs(rig: Rig) -> Iterator[Fault]:
+def _packs(rig: Rig, canopies_lost: bool) -> Iterator[Fault]:
     counts = [0] * len(rig.canopy)
     for row, pack in enumerate(rig.pack):
         yield from _pack_dates(rig.drop.date, row, pack.made, pack.packed)
-        if pack.row is None or not rig.canopy:
+        if pack.row is None or canopies_lost:
             continue
         if pack.row > len(rig.canopy):
-            yield Fault(("pack", row, "row"), str(pack.row), f"a canopy row from 1 to {len(rig.canopy)}")
+            expected = f"a canopy row from 1 to {len(rig.canopy)}" if rig.canopy else "a canopy row; there is none"
+            yield Fault(("pack", row, "row"), str(pack.row), expected)
             continue
         counts[pack.row - 1] += 1
         canopies = rig.canopy[pack.row - 1].count
         if canopies is not None and counts[pack.row - 1] > canopies:
             expected = f"no more packs than the {canopies} of canopy row {pack.row}"
             yield Fault(("pack", row, "row"), f"pack {counts[pack.row - 1]} of that row", expected)
-    if rig.pack and not rig.canopy and "canopy" not in rig.model_fields_set:
-        yield Fault(("pack",), "packs without a canopy", "the [[canopy]] row they belong to")
 
 
 def _pack_dates(drop: date | None, row: int, made: date | None, packed: date | None) -> Iterator[Fault]:

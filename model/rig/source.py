@@ -79,32 +79,34 @@ def shown_path(path: Path | str) -> str:
     return "".join(mark if mark.isprintable() else f"\\x{ord(mark):02x}" for mark in text)
 
 
-def key_path(raw: Any, loc: Loc) -> str:
-    """A place in words: rows count from 1 and are followed by their name."""
+def key_path(data: Any, loc: Loc) -> str:
+    """A place in words: rows count from 1 and are followed by their name.
+
+    Args:
+        data: raw values or a model.
+        loc: the place in it.
+    """
     words = ""
     for part in loc:
-        raw = _inside(raw, part)
+        data = _inside(data, part)
         if isinstance(part, int):
-            name = next((raw[key] for key in _ROW_NAMES if isinstance(raw.get(key), str)), "") if _table(raw) else ""
+            name = next((name for key in _ROW_NAMES if isinstance(name := _inside(data, key), str)), "")
             name = "".join(mark for mark in name if mark.isprintable())[:60]
             number = f"row {part + 1}" if words == "canopy" else str(part + 1)
             words += f" {number} ({name})" if name else f" {number}"
         else:
             shown = part if re.fullmatch(r"[\w-]+", part) else f'"{part[:60]}"'
-            shown = "".join(mark if mark.isprintable() else " " for mark in shown)
+            shown = "".join(mark if mark.isprintable() else " " for mark in shown[:62])
             words += f".{shown}" if words else shown
     return words
 
 
-def _table(raw: Any) -> bool:
-    return isinstance(raw, dict)
-
-
-def _inside(raw: Any, part: str | int) -> Any:
-    try:
-        return raw[part]
-    except (KeyError, IndexError, TypeError):
-        return None
+def _inside(data: Any, part: str | int) -> Any:
+    if isinstance(data, dict):
+        return data.get(part)
+    if isinstance(part, str):
+        return getattr(data, part, None)
+    return data[part] if isinstance(data, list | tuple) and part < len(data) else None
 
 
 def read_bytes(path: Path) -> bytes:

@@ -25,28 +25,30 @@ _PLACEHOLDERS: dict[str, dict[str, Any]] = {
 """What stands for a required table that is missing, while the rest is checked."""
 
 
-def validate(file: TomlFile, kind: type[M], rules: Callable[[M], Iterable[Fault]]) -> M:
+def validate(file: TomlFile, kind: type[M], rules: Callable[[M, frozenset[str]], Iterable[Fault]]) -> M:
     """A model from a file's raw values.
 
     Args:
         file: the file.
         kind: the model.
-        rules: checks across fields; they run on what could be read, where a lost field is None.
+        rules: checks across fields; they run on what could be read, where a lost field is None, and are told which
+            tables were lost whole.
 
     Raises:
         InputError: with every mistake of the file.
     """
     faults: list[Fault] = []
     raw = file.raw
+    lost: set[str] = set()
     for _ in range(4):  # taking one mistake out may bring another to light, a few levels deep at most
         try:
             model = kind.model_validate(raw)
         except ValidationError as error:
             errors = error.errors(include_url=False, include_input=True)
             faults.extend(fault for item in errors if (fault := _fault(item, kind)) not in faults)
-            raw = _without(raw, errors)
+            raw = _without(raw, errors, lost)
         else:
-            faults.extend(rules(model))
+            faults.extend(rules(model, frozenset(lost)))
             if faults:
                 raise InputError(limited(file.problems(faults)))
             return model
@@ -98,8 +100,8 @@ def _model_in(annotation: Any) -> type[Strict] | None:
     return None
 
 
-def _without(raw: dict[str, Any], errors: Iterable[Any]) -> dict[str, Any]:
-    """A copy in which the mistakes are taken out, or replaced by what stands for a lost value."""
+def _without(raw: dict[str, Any], errors: Iterable[Any], lost: set[str]) -> dict[str, Any]:
+    """A copy in which the mistakes are taken out, or replaced by what stands for a lost value; notes lost tables."""
     kept = copy.deepcopy(raw)
     for error in errors:
         loc: Loc = error["loc"]
@@ -107,11 +109,13 @@ def _without(raw: dict[str, Any], errors: Iterable[Any]) -> dict[str, Any]:
             _put(kept, loc, _stand_in(loc))
         elif error["type"] == "extra_forbidden":
             _drop(kept, loc)
-        elif loc and len(loc) == 1 and loc[0] in _PLACEHOLDERS:
+        elif len(loc) == 1 and loc[0] in _PLACEHOLDERS:
             _put(kept, loc, _stand_in(loc))
         else:
             # One row that is no table takes its table with it: leaving it out would renumber the others.
-            _drop(kept, loc[:-1] if loc and isinstance(loc[-1], int) else loc)
+            table = loc[:-1] if isinstance(loc[-1], int) else loc
+            _drop(kept, table)
+            lost.update(str(key) for key in table[:1] if len(table) == 1)
     return kept
 
 
