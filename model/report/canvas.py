@@ -84,7 +84,7 @@ class Canvas:
 
 def cell_width(char: str) -> int:
     """How many cells a character takes."""
-    if unicodedata.combining(char):
+    if unicodedata.category(char) in ("Mn", "Me"):
         return 0
     return 2 if unicodedata.east_asian_width(char) in "WF" else 1
 

@@ -6,7 +6,6 @@ gaps in a curve.
 
 from __future__ import annotations
 
-import math
 import unicodedata
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
@@ -193,14 +192,17 @@ def parted(piece: Sequence[Point], limits: Iterable[Bound]) -> list[Point]:
 
 
 def plain(text: str, ascii: bool = False) -> str:  # noqa: A002
-    """A text that keeps to its line: characters that control a display are made visible.
+    """A text that keeps to its line: characters that control a display are made visible, spaces are plain.
 
     Args:
         text: Any text, also a user's.
         ascii: Whether to spell everything in ASCII.
     """
     hidden = "?" if ascii else "\N{REPLACEMENT CHARACTER}"
-    shown = "".join(hidden if unicodedata.category(char)[0] == "C" or char in "\u2028\u2029" else char for char in text)
+    shown = ""
+    for char in text:
+        category = unicodedata.category(char)
+        shown += " " if category == "Zs" else hidden if category[0] == "C" or category[0] == "Z" else char
     if not ascii:
         return shown
     for sign, spelling in _SPELLED.items():
@@ -209,6 +211,12 @@ def plain(text: str, ascii: bool = False) -> str:  # noqa: A002
     return "".join(char if char.isascii() else "?" for char in letters if not unicodedata.combining(char))
 
 
-def short(number: float) -> str:
-    """A number in four digits, for texts beside a picture."""
-    return f"{number:,.4g}" if math.isfinite(number) else "none"
+def short(number: float, limits: Iterable[Bound] = ()) -> str:
+    """A number in four digits, or as many as it takes to stand on its own side of every limit."""
+    bounds = list(limits)
+    for digits in range(4, 17):
+        text = f"{number:,.{digits}g}"
+        shown = float(text.replace(",", ""))
+        if all(bound.is_broken_by(shown) == bound.is_broken_by(number) for bound in bounds):
+            return text
+    return f"{number!r}"

@@ -96,11 +96,15 @@ def describe(chart: Chart) -> str:
             sentences.append(f"{name}: no data.")
             continue
         low = min(y for piece in curve.pieces for _, y in piece)
-        sentences.append(f"{name}: from {short(low)} to {short(peak.y)}, highest at {short(peak.x)}.")
+        ends = f"from {short(low, chart.limits)} to {short(peak.y, chart.limits)}"
+        beyond = curve.role != "starting" and (chart.breaks_a_limit(low) or chart.breaks_a_limit(peak.y))
+        sentences.append(f"{name}: {ends}, highest at {short(peak.x)}{', beyond the limit' if beyond else ''}.")
     for bound in chart.limits:
         sentences.append(f"Limit, {'at most' if bound.kind == 'max' else 'at least'}: {bound.text}.")
     for mark in chart.drawable_marks():
-        sentences.append(f"Marked: {short(mark.y)} at {short(mark.x)}{', ' + mark.text if mark.text else ''}.")
+        sentences.append(
+            f"Marked: {short(mark.y, chart.limits)} at {short(mark.x)}{', ' + mark.text if mark.text else ''}."
+        )
     return " ".join(sentences) or "No data."
 
 

@@ -5,7 +5,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from model.report.chart import Axis, Bound, Chart, Curve, Mark, parted, peak_of, plain, thinned
+from model.report.chart import Axis, Bound, Chart, Curve, Mark, parted, peak_of, plain, short, thinned
 
 X, Y = Axis("time", "s"), Axis("force", "kN")
 
@@ -81,5 +81,13 @@ def test_no_stretch_of_a_parted_line_crosses_a_limit(heights: list[float], one: 
 def test_texts_keep_to_their_line_and_have_an_ascii_form() -> None:
     assert plain("a\n\x1b[31mb\u202ec\u2028d") == "a��[31mb�c�d"
     assert plain("28 °C ± 3 m²·é 高\x07", ascii=True) == "28 degC +/- 3 m2 e ??"
+    assert plain("a\u00a0b\u3000c") == "a b c"
     assert plain("[kN] [/]") == "[kN] [/]"
     assert plain("\ud800") == "\N{REPLACEMENT CHARACTER}"
+
+
+def test_a_short_number_stays_on_its_side_of_a_limit() -> None:
+    assert short(28.5413, [Bound(30)]) == "28.54"
+    assert short(133.0004, [Bound(133)]) == "133.0004"
+    assert short(math.nextafter(133, 134), [Bound(133)]) == repr(math.nextafter(133, 134))
+    assert short(1249.6, [Bound(1250, kind="min")]) == "1,249.6"

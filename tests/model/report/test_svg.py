@@ -42,7 +42,7 @@ def test_the_picture_is_named_and_described() -> None:
     assert title is not None
     assert description is not None
     assert title.text == "Opening force"
-    assert "now: from 0 to 78.7, highest at 1.1." in (description.text or "")
+    assert "now: from 0 to 78.7, highest at 1.1, beyond the limit." in (description.text or "")
     assert "Limit, at most: 60." in (description.text or "")
     assert (root.get("aria-labelledby") or "").split() == [title.get("id"), description.get("id")]
 
