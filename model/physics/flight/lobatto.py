@@ -83,8 +83,8 @@ def values_at(nodes: Lobatto, x: Array, *histories: Array) -> list[Array]:
     return [dot(weights, history) if history.ndim == 2 else history for history in histories]
 
 
-def root_after(nodes: Lobatto, values: Array, left: NDArray[np.intp], steps: int = 3) -> Array:
-    """The x where a node polynomial is zero between node ``left`` and the next one, by Newton's method.
+def root_after(nodes: Lobatto, values: Array, left: NDArray[np.intp], steps: int = 4) -> Array:
+    """The x where a node polynomial is zero between node ``left`` and the next one, by Newton's method with a bracket.
 
     The answer never leaves that interval; where there is no change of sign it is some point of it.
     """
@@ -96,5 +96,9 @@ def root_after(nodes: Lobatto, values: Array, left: NDArray[np.intp], steps: int
     slopes = series[1:] * np.arange(1.0, len(series))[:, None]
     for _ in range(steps):
         table = power_table(x, len(series))
-        x = np.fmin(np.fmax(x - dot(series, table) / dot(slopes, table[:-1]), low), high)
+        value = dot(series, table)
+        before = value * at_low > 0
+        low, high = np.where(before, x, low), np.where(before, high, x)
+        x = x - value / dot(slopes, table[:-1])
+        x = np.where((x >= low) & (x <= high), x, 0.5 * (low + high))
     return x

@@ -26,7 +26,7 @@ class Peak:
 def largest_force(piece: Piece, air: Air, area_at: AreaAt | None, flying: Mask) -> tuple[Array, Array]:
     """Largest density V^2/2 x area within a piece, N, and its time, s; with no area that of density V^2/2, Pa."""
     area = 1.0 if area_at is None else area_at(piece.nodes.tau)
-    best, time, x, chosen = _largest(piece, piece.square * (piece.density * area), flying)
+    best, time, x, chosen = _largest(piece, piece.density * area, flying)
     if chosen is not None:
         A, U, P, z = values_at(piece.nodes, x, *_of(chosen, piece.A, piece.U, piece.P, piece.z))
         speed_square = (U * U + P * P) / (A * A)
@@ -39,19 +39,26 @@ def largest_force(piece: Piece, air: Air, area_at: AreaAt | None, flying: Mask) 
 
 def largest_speed(piece: Piece, flying: Mask) -> Array:
     """Largest speed through the air within a piece, m/s."""
-    best, time, x, chosen = _largest(piece, piece.square, flying)
+    best, time, x, chosen = _largest(piece, None, flying)
     if chosen is not None:
         A, U, P = values_at(piece.nodes, x, *_of(chosen, piece.A, piece.U, piece.P))
         best, _ = _better(best, time, (U * U + P * P) / (A * A), _moment(piece, x, chosen), chosen)
     return np.sqrt(best) * piece.unit
 
 
-def _largest(piece: Piece, top: Array, flying: Mask) -> tuple[Array, Array, Array, Mask | None]:
-    """The largest top/A^2: its best node value and time, and where between nodes some cases (the mask) have more."""
-    nodes, A = piece.nodes, piece.A
-    value = top / (A * A)
+def _largest(piece: Piece, weight: Array | None, flying: Mask) -> tuple[Array, Array, Array, Mask | None]:
+    """The largest weight (U^2 + P^2)/A^2: best node value and time, and where between nodes some cases (the mask) have more.
+
+    Only the weight is differentiated as a polynomial: U^2 + P^2 and A grow by powers of ten within a piece, and the slope
+    of such a polynomial is lost in rounding at its small end.
+    """
+    nodes, A, square = piece.nodes, piece.A, piece.square
+    value = square / (A * A)
+    rising = piece.square_slope * A - 2 * square * piece.drive          # has the sign of d value
+    if weight is not None:
+        value *= weight
+        rising = nodes.stretch * weight * rising + (nodes.slope @ weight) * (square * A)
     case, best = np.arange(A.shape[1]), value.argmax(0)
-    rising = (nodes.slope @ top) * A - 2 * nodes.stretch * top * piece.drive        # has the sign of d value
     climbs = rising[best, case]
     last = len(A) - 1
     inner = flying & ~((best == 0) & (climbs <= 0)) & ~((best == last) & (climbs >= 0))

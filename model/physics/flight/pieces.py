@@ -73,6 +73,8 @@ class Piece:
     """kg/m3, without a case's density factor."""
     pace: Array
     """Seconds per unit of tau: (cases,) or, of a piece followed by distance, (nodes, cases)."""
+    pull: Array | float
+    """dP / dtau = pull A."""
 
     @cached_property
     def square(self) -> Array:
@@ -80,6 +82,14 @@ class Piece:
         square = self.P * self.P
         square += self.U * self.U
         return square
+
+    @cached_property
+    def square_slope(self) -> Array:
+        """d (U^2 + P^2) / dtau."""
+        slope = 2 * self.P * self.A * self.pull
+        if self.layer.slope is not None:
+            slope += 2 * self.U * self.P * (self.layer.slope * self.pace)
+        return slope
 
     @cached_property
     def elapsed(self) -> Array:
@@ -157,7 +167,7 @@ def by_time(
     x = start.x + duration * (nodes.integral[-1] @ (u * fall + layer.at(z)))
     error = np.maximum(start.error, np.maximum(left, ripple))
     end = State(start.t + duration, x, z[-1].copy(), u[-1] * fall, P[-1] / A[-1] * fall, error, start.landed, start.layer)
-    return Piece(nodes, start, end, area_at, layer, fall, A, U, P, drive, z, density, duration)
+    return Piece(nodes, start, end, area_at, layer, fall, A, U, P, drive, z, density, duration, 1.0)
 
 
 def by_distance(
@@ -218,7 +228,7 @@ def by_distance(
     x = start.x + nodes.integral[-1] @ (pace * (u + layer.at(z)))
     error = np.maximum(start.error, np.maximum(left, ripple))
     end = State(start.t + time, x, z[-1].copy(), u[-1], P[-1] / A[-1], error, start.landed, start.layer)
-    return Piece(nodes, start, end, area_at, layer, 1.0, A, U, P, drive, z, density, pace)
+    return Piece(nodes, start, end, area_at, layer, 1.0, A, U, P, drive, z, density, pace, load.gravity * pace)
 
 
 def _first_guess(start: State, U: Array, fallen: Array) -> Array:
