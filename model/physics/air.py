@@ -27,6 +27,10 @@ EARTH_RADIUS = 6_356_766.0
 """Radius that turns geometric into geopotential height, m."""
 LOWEST_ZONE, HIGHEST_ZONE = -500.0, 9_000.0
 """Elevations of a drop zone that the day's air is made for, m."""
+LOWEST_SETTING, HIGHEST_SETTING = 85_000.0, 110_000.0
+"""Altimeter settings that it is made for, Pa; weather has not been seen outside 87,000 to 108,500."""
+COLDEST_ZONE, WARMEST_ZONE = 180.0, 335.0
+"""Temperatures and dew points at the zone that it is made for, K; weather has not been seen outside 184 to 330."""
 
 _EXPONENT = CONSTANTS["g0"] / (GAS_CONSTANT * LAPSE)
 _DECAY = CONSTANTS["g0"] / GAS_CONSTANT

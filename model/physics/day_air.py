@@ -64,6 +64,11 @@ def dew_point_over(dew_point: float, temperature: float) -> bool:
     return dew_point > temperature
 
 
+def _require(name: str, value: Real | None, low: float, high: float, unit: str) -> None:
+    if value is not None and not np.all((np.asarray(value) >= low) & (np.asarray(value) <= high)):
+        raise ValueError(f"{name} outside {low:g} to {high:g} {unit}")
+
+
 @dataclass(frozen=True, slots=True)
 class DayAir:
     """The day's air above (and a little below) a drop zone; make it with `DayAir.at`.
@@ -99,23 +104,26 @@ class DayAir:
 
         Args:
             zone_elevation: Geometric elevation of the zone, m, from `air.LOWEST_ZONE` to `air.HIGHEST_ZONE`.
-            zone_temperature: Temperature at the zone, K; a standard day if missing.
-            altimeter_setting: Altimeter setting, Pa; 101325 Pa if missing.
-            dew_point: Dew point at the zone, K; dry air if missing. Not over the temperature (see `dew_point_over`).
+            zone_temperature: Temperature at the zone, K, from `air.COLDEST_ZONE` to `air.WARMEST_ZONE`; a standard day
+                if missing.
+            altimeter_setting: Altimeter setting, Pa, from `air.LOWEST_SETTING` to `air.HIGHEST_SETTING`; 101325 Pa if
+                missing.
+            dew_point: Dew point at the zone, K, in the range of temperatures; dry air if missing. Whether it lies over
+                the temperature is for the caller to ask, with `dew_point_over`.
 
         Raises:
-            ValueError: If the elevation is out of range, or the setting gives no pressure there.
+            ValueError: If one of them is out of its range or not a number: a slip of the unit, not weather.
         """
-        if np.any(np.less(zone_elevation, air.LOWEST_ZONE)) or np.any(np.greater(zone_elevation, air.HIGHEST_ZONE)):
-            raise ValueError(f"zone elevation outside {air.LOWEST_ZONE:g} to {air.HIGHEST_ZONE:g} m")
+        _require("zone elevation", zone_elevation, air.LOWEST_ZONE, air.HIGHEST_ZONE, "m")
+        _require("zone temperature", zone_temperature, air.COLDEST_ZONE, air.WARMEST_ZONE, "K")
+        _require("altimeter setting", altimeter_setting, air.LOWEST_SETTING, air.HIGHEST_SETTING, "Pa")
+        _require("dew point", dew_point, air.COLDEST_ZONE, air.WARMEST_ZONE, "K")
         height = air.geopotential_height(zone_elevation)
         setting = air.SEA_LEVEL_PRESSURE if altimeter_setting is None else altimeter_setting
         pressure = air.station_pressure(setting, height)
         standard = air.standard_temperature(height)
         temperature = standard if zone_temperature is None else zone_temperature
         vapour: Real = 0.0 if dew_point is None else air.vapour_pressure(dew_point)
-        if not np.all(np.greater(pressure, vapour)):
-            raise ValueError("altimeter setting too low: no air is left at the zone")
         return cls(
             zone_elevation=zone_elevation,
             zone_height=height,
