@@ -5,7 +5,7 @@ from math import isclose
 import numpy as np
 import pytest
 from hypothesis import assume, given, settings
-from hypothesis import settings, strategies as st
+from hypothesis import strategies as st
 
 from model.physics import cushion
 from model.physics.cushion import CushionFit

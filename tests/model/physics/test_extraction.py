@@ -5,7 +5,7 @@ from math import atan, radians
 import numpy as np
 import pytest
 from hypothesis import given, settings
-from hypothesis import settings, strategies as st
+from hypothesis import strategies as st
 
 from model.physics import extraction
 

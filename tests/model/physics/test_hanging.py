@@ -5,7 +5,7 @@ from math import radians
 import numpy as np
 import pytest
 from hypothesis import assume, example, given, settings
-from hypothesis import settings, strategies as st
+from hypothesis import strategies as st
 
 from model.physics.hanging import Hang, Outcome, hang, leg_shares
 from model.physics.sling import equal_leg_tension

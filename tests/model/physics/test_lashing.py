@@ -6,7 +6,7 @@ from typing import get_args
 import numpy as np
 import pytest
 from hypothesis import given, settings
-from hypothesis import settings, strategies as st
+from hypothesis import strategies as st
 
 from model.physics import lashing
 from model.physics.lashing import DIRECTIONS, Mirror, Row, hold
