@@ -160,10 +160,10 @@ class _Reader:
         number, rest = self._split(part, True)
         if rest.strip() == "%":
             return self._per_cent(self._number(number), value, unit), True
-        if not rest.strip() and unit:
-            self.fail(f'the tolerance has no unit: "± {number} {unit.rsplit(maxsplit=1)[-1]}" or "± {number} %"')
         if unit == "%":
             self.fail("write both as plain numbers, as in 0.95 ± 0.02")
+        if not rest.strip() and unit:
+            self.fail(f'the tolerance has no unit: "± {number} {unit.rsplit(maxsplit=1)[-1]}" or "± {number} %"')
         width, width_unit = self.value(part, in_tolerance=True)
         if width < 0:
             self.fail("a tolerance is not negative")
@@ -222,6 +222,8 @@ class _Reader:
     def _refuse_unit(self, number: str, unit: str, in_tolerance: bool) -> NoReturn:
         if not unit:
             self.fail("no unit" if not _TOLERANCE.search(self.text) or in_tolerance else "no unit before the ±")
+        if unit == FEET_INCHES:
+            self.fail('write feet and inches as in "8 ft 6 in"')
         others = dimensions_of(unit)
         if others:
             self.fail(f"{unit} is a unit of {' and '.join(other.value for other in others)}")
