@@ -1,0 +1,1 @@
+"""The model: quantities, physics, rig files, checks, studies and reports; it knows no screen."""

@@ -1,0 +1,1 @@
+"""The full screen and the command line."""

@@ -1,0 +1,1 @@
+"""The steps of the checklist: from a rig and a limit set to findings."""

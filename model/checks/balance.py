@@ -20,7 +20,7 @@ def _side_step(case: Case) -> Outcome:
     return Outcome(case.masses.centre(1), notes=(LEFT_OF_MIDDLE,))
 
 
-def smallerside(case: Case) -> Term:
+def smaller_side(case: Case) -> Term:
     """The smaller side of the base."""
     return least([side(case, "length"), side(case, "width")], "b", "smaller side of the base")
 
@@ -29,7 +29,7 @@ def _slenderness(case: Case) -> Outcome:
     centre = case.masses.centre(2)
     depth = case.motions.rigged_height.inputs[1]
     over = total([centre, depth], "h", "centre of gravity over the platform's underside")
-    return Outcome(derive(balance.slenderness, over, smallerside(case)))
+    return Outcome(derive(balance.slenderness, over, smaller_side(case)))
 
 
 STEPS = (

@@ -3,16 +3,23 @@
 from __future__ import annotations
 
 from functools import cached_property
+from typing import TYPE_CHECKING
 
 from model.checks.day import Day
 from model.checks.forces import Forces
+from model.checks.hanging import Hanging
 from model.checks.heights import Heights
 from model.checks.masses import Masses
 from model.checks.missing import Missing, need
 from model.checks.motion import Motions
 from model.checks.rows import CanopyRow
 from model.rig.limits import LimitSet
-from model.rig.rig import Exit, Platform, Rig
+from model.rig.parts import Platform
+from model.rig.rig import Exit, Rig
+
+if TYPE_CHECKING:
+    from model.checks.landing import Cushioning
+    from model.checks.lashing import Lashings
 
 
 class Case:
@@ -33,6 +40,25 @@ class Case:
             raise Missing("canopy")
         falling = self.masses.falling
         return tuple(CanopyRow(i, one, falling) for i, one in enumerate(self.rig.canopy))
+
+    @cached_property
+    def hanging(self) -> Hanging:
+        """How the load hangs."""
+        return Hanging(self)
+
+    @cached_property
+    def cushioning(self) -> Cushioning:
+        """The stacks under the load, or `Missing`."""
+        from model.checks.landing import Cushioning
+
+        return Cushioning(self)
+
+    @cached_property
+    def lashings(self) -> Lashings:
+        """The lashings, or `Missing`."""
+        from model.checks.lashing import Lashings
+
+        return Lashings(self)
 
     @property
     def platform(self) -> Platform:

@@ -12,10 +12,12 @@ from model.checks.finding import STEP_UNITS, Checklist, Finding, Limit, Signatur
 from model.checks.inputs import verify
 from model.checks.step import Ruling, Step, judge
 from model.rig import digest, record
-from model.rig.errors import InputError
+from model.rig.entry import Entry
+from model.rig.errors import InputError, InputProblem
 from model.rig.limits import Bounds, LimitSet, resolve
 from model.rig.reading import Loaded, load
 from model.rig.rig import TABLES
+from model.rig.standing import standing
 
 
 def check(path: Path) -> Checklist:
@@ -25,9 +27,9 @@ def check(path: Path) -> Checklist:
         InputError: Where a file cannot be used; it holds every problem found.
     """
     loaded = load(path)
-    problems = []
+    problems: list[InputProblem] = []
     try:
-        entries: Sequence[record.Entry] = record.read_record(record.record_path(path))
+        entries: Sequence[Entry] = record.read_record(record.record_path(path))
     except InputError as error:
         problems += error.problems
         entries = ()
@@ -40,7 +42,7 @@ def check(path: Path) -> Checklist:
     return checklist
 
 
-def check_loaded(loaded: Loaded, entries: Sequence[record.Entry] = ()) -> Checklist:
+def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
     """Check a rig that has been read.
 
     Raises:
@@ -51,12 +53,14 @@ def check_loaded(loaded: Loaded, entries: Sequence[record.Entry] = ()) -> Checkl
     verify(rig_file)
     case = Case(rig_file.rig, limits.limits if limits else None)
     limits_raw = limits.raw if limits else None
-    standings = record.standing(entries, rig_file.raw, limits_raw)
-    findings = [judge(step, case, rulings.get(step.limited_by, Ruling())) for step in registry.steps(case)]
+    standings = standing(entries, rig_file.raw, limits_raw)
+    steps = registry.steps(rig_file.rig)
+    findings = [judge(step, case, rulings.get(step.limited_by, Ruling())) for step in steps]
     if limits is not None:
         findings += [inspected.find(one, standings.answers.get(one.key)) for one in limits.limits.inspection]
     _known_parts(loaded, findings)
-    findings = [_left_out(finding, case) for finding in _ordered(findings)]
+    tables = {step.key: step.tables for step in steps}
+    findings = [_left_out(finding, case, tables.get(finding.key, ())) for finding in _ordered(findings)]
     deviations = {key: one.entry.remark for key, one in standings.deviations.items()}
     findings = [replace(one, deviation=deviations.get(one.key)) for one in findings]
     return Checklist(
@@ -109,10 +113,6 @@ def _ordered(findings: list[Finding]) -> list[Finding]:
     return sorted(findings, key=place)
 
 
-def _tables_of(finding: Finding) -> tuple[str, ...]:
-    return next((step.tables for step in registry.FIXED if step.key == finding.key), ())
-
-
 def _known_parts(loaded: Loaded, findings: Sequence[Finding]) -> None:
     """Refuse a left-out part that names no table, no group and no step."""
     known = {*TABLES, *(one.group for one in findings), *(one.key for one in findings)}
@@ -126,13 +126,13 @@ def _known_parts(loaded: Loaded, findings: Sequence[Finding]) -> None:
 
 
 def _near(part: str, known: set[str]) -> str:
-    from model.rig.fields import nearest
+    from model.rig.rule import nearest
 
     return nearest(part, sorted(known))
 
 
-def _left_out(finding: Finding, case: Case) -> Finding:
-    names = {finding.key, finding.group, *_tables_of(finding)}
+def _left_out(finding: Finding, case: Case, tables: tuple[str, ...]) -> Finding:
+    names = {finding.key, finding.group, *tables}
     for part in case.rig.left_out:
         if part.part in names:
             return replace(

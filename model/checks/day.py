@@ -9,6 +9,7 @@ from model.checks.missing import need
 from model.checks.term import Procedure, Term, combine, derive, given, known, total
 from model.physics import air
 from model.physics.day_air import DayAir
+from model.physics.types import Real
 from model.rig.rig import Drop
 
 SOURCE = "U.S. Standard Atmosphere 1976; hydrostatic from the zone with the day's constant offset"
@@ -105,7 +106,7 @@ class Day:
         ]
         return day_air(values[0], *chosen)
 
-    def aloft(self, pick: Callable[[DayAir, float], float], text: str, at: Term, symbol: str, meaning: str,
+    def aloft(self, pick: Callable[[DayAir, float], Real], text: str, at: Term, symbol: str, meaning: str,
               dimension: str, unit: str | None = None) -> Term:
         """A property of the air at a height."""
         def function(height: float, *values: float) -> float:

@@ -12,7 +12,8 @@ from model.checks.term import Term, derive, largest, total
 from model.physics import canopy, drag
 
 
-def _rate_measured(case: Case) -> bool:
+def rate_is_measured(case: Case) -> bool:
+    """Whether every canopy that hangs open at the end has a measured rate that is used."""
     return all(one.measured_rate_used for one in case.open_at_end)
 
 
@@ -36,7 +37,7 @@ def rate(case: Case) -> Term:
 
 
 def _rate(case: Case) -> Outcome:
-    return Outcome(rate(case), measured=_rate_measured(case), cautions=_measured_cautions(case.open_at_end))
+    return Outcome(rate(case), measured=rate_is_measured(case), cautions=_measured_cautions(case.open_at_end))
 
 
 def several_mains(rig_counts: Sequence[int]) -> bool:
@@ -59,7 +60,7 @@ def _rate_one_out(case: Case) -> Outcome:
     result = derive(
         drag.terminal_speed, case.masses.falling, case.day.density, area, of="rate of descent with one canopy out"
     )
-    return Outcome(result, measured=_rate_measured(case), cautions=_measured_cautions(rows))
+    return Outcome(result, measured=rate_is_measured(case), cautions=_measured_cautions(rows))
 
 
 def _from_motion(case: Case, attribute: str, symbol: str, meaning: str, dimension: str) -> Term:
@@ -70,7 +71,7 @@ def _from_motion(case: Case, attribute: str, symbol: str, meaning: str, dimensio
 
 def _time(case: Case) -> Outcome:
     term = _from_motion(case, "touchdown_time", "t", "release to touchdown", "time")
-    return Outcome(term, measured=_rate_measured(case), cautions=case.forces.cautions)
+    return Outcome(term, measured=rate_is_measured(case), cautions=case.forces.cautions)
 
 
 def _drift(case: Case) -> Outcome:
@@ -78,7 +79,7 @@ def _drift(case: Case) -> Outcome:
     if not drop.winds:
         need(drop.surface_wind, "drop.surface_wind")
     term = _from_motion(case, "touchdown_distance", "x", "ground distance along the run-in, throw included", "length")
-    return Outcome(term, measured=_rate_measured(case), cautions=case.forces.cautions)
+    return Outcome(term, measured=rate_is_measured(case), cautions=case.forces.cautions)
 
 
 def vertical_at_touchdown(case: Case) -> Term:

@@ -4,16 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
+import numpy as np
+
 from model.checks.day import Day
 from model.checks.missing import need
 from model.checks.rows import CanopyRow
 from model.physics.flight import Drop, Filling, Row
+from model.rig.canopy import WhenNextOpens
 from model.rig.rig import Rig
 
 
 def build(values: Mapping[str, float], rig: Rig, day: Day, rows: Sequence[CanopyRow]) -> Drop:
     """A drop from the values of `Motions.plan`."""
     weather = [values[f"air {i}"] for i in range(len(day.inputs))]
+    air = day.air(*weather)
     winds = tuple(
         (values[f"wind {i} height"], values[f"wind {i} speed"]) for i in range(len(day.winds()))
     )
@@ -23,7 +27,7 @@ def build(values: Mapping[str, float], rig: Rig, day: Day, rows: Sequence[Canopy
         release_height=values["release_height"],
         load_drag_area=values["load_drag_area"],
         rows=tuple(_row(values, k, one, last=k == len(rows) - 1) for k, one in enumerate(rows)),
-        density=day.air(*weather).density,
+        density=lambda height: np.asarray(air.density(height)),
         ground_altitude=weather[0],
         winds=winds,
     )
@@ -33,7 +37,7 @@ def _row(values: Mapping[str, float], k: int, one: CanopyRow, *, last: bool) -> 
     def value(name: str) -> float | None:
         return values.get(f"row {k} {name}")
 
-    leaving = "stays" if last else need(one.row.when_next_opens, one.field("when_next_opens"))
+    leaving: WhenNextOpens = "stays" if last else need(one.row.when_next_opens, one.field("when_next_opens"))
     return Row(
         fillings=tuple(_filling(values, k, filling.number) for filling in one.fillings),
         line_stretch=value("line_stretch"),

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from datetime import datetime
 from enum import StrEnum
 from math import pi
@@ -195,6 +195,15 @@ class Checklist:
             f for f in self.findings if f.margin is not None and f.verdict in (Verdict.PASS, Verdict.FAIL)
         ]
         return min(counted, key=lambda finding: finding.margin or 0.0, default=None)
+
+
+COMPUTED_ALONE = "inspected steps left out: computed steps alone"
+
+
+def computed_alone(checklist: Checklist) -> Checklist:
+    """The checklist without its inspected steps, which it says."""
+    findings = tuple(one for one in checklist.findings if one.kind is Kind.COMPUTED)
+    return replace(checklist, findings=findings, notes=(*checklist.notes, COMPUTED_ALONE))
 
 
 def overall(verdicts: list[Verdict]) -> Verdict:

@@ -147,7 +147,7 @@ class Forces:
         return (*found, *self.unused())
 
     def _in_class(self, one: CanopyRow) -> bool:
-        loading = canopy.canopy_loading(self.masses.suspended.value, one.full_area.value)
+        loading = float(canopy.canopy_loading(self.masses.suspended.value, one.full_area.value))
         return one.type.solid and bool(canopy.in_handbook_class(one.diameter.value, loading))
 
     def notes(self) -> tuple[str, ...]:

@@ -11,7 +11,7 @@ from model.physics import canopy
 
 if TYPE_CHECKING:
     from model.checks.forces import Forces
-    from model.checks.motion import Motions
+    from model.checks.motion import Motions, Rule
 
 NO_SWING = "no line_length of the last row: no allowance for the load swinging under its canopy"
 
@@ -22,12 +22,12 @@ class Heights:
     def __init__(self, motions: Motions, forces: Forces) -> None:
         self.motions, self.forces = motions, forces
 
-    def _lost_by(self, rule: str) -> float:
+    def _lost_by(self, rule: Rule) -> float:
         motion = self.motions.motion(rule)
         return float(motion.slow_height[0])
 
     @cached_property
-    def rule(self) -> str:
+    def rule(self) -> Rule:
         """The rule with the larger loss; of two that never slow down, the one that lands first."""
         rules = self.motions.rules
         slow = {rule: self._lost_by(rule) for rule in rules}
@@ -36,7 +36,7 @@ class Heights:
             return min(never, key=lambda rule: float(self.motions.motion(rule).touchdown_time[0]))
         return min(rules, key=lambda rule: slow[rule])
 
-    def flown_loss(self, rule: str) -> Term:
+    def flown_loss(self, rule: Rule) -> Term:
         """Release height less the height at which the load has slowed to 1.05 of the steady rate."""
         self.forces.must_open()
         if self._lost_by(rule) != self._lost_by(rule):

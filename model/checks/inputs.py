@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from model.physics import air
+from model.physics import air, day_air
 from model.rig.errors import InputError, InputProblem
 from model.rig.reading import RigFile
 
@@ -27,7 +27,7 @@ def _air(rig_file: RigFile) -> list[InputProblem]:
     elif drop.zone_elevation is not None and drop.dew_point is not None:
         temperature = drop.zone_temperature
         here = temperature.value if temperature else air.standard_temperature(air.geopotential_height(drop.zone_elevation.value))
-        if air.dew_point_over(drop.dew_point.value, float(here)):
+        if day_air.dew_point_over(drop.dew_point.value, float(here)):
             expected = "a dew point not over the temperature at the zone"
             problems.append(rig_file.problem(("drop", "dew_point"), f'"{drop.dew_point.text}"', expected))
     return problems

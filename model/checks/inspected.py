@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from model.checks.finding import Answer, Finding, Inspection, Kind, Verdict
-from model.rig import limits, record
+from model.rig import limits
+from model.rig.standing import Standing
 
 NOT_YET = "not inspected yet"
 
 
-def find(inspection: limits.Inspection, standing: record.Standing | None) -> Finding:
+def find(inspection: limits.Inspection, standing: Standing | None) -> Finding:
     """The finding of one inspection with its standing answer, if there is one."""
     entry = standing.entry if standing else None
     answer = None

@@ -153,6 +153,15 @@ class Masses:
         more, further = self._places(axis, canopies=True)
         return combine(CENTRE, [*masses, *more, *places, *further], name, "centre of gravity, canopies in", "length")
 
+    def centre_above(self, axis: int, *, platform: bool) -> Term:
+        """One coordinate of the centre of gravity of what lies over a stack: the items, with or without the platform."""
+        if platform:
+            return self.centre_without_canopies(axis)
+        masses, places = self._places(axis, canopies=False)
+        if self.platform is not None:
+            masses, places = masses[1:], places[1:]
+        return combine(CENTRE, [*masses, *places], f"{AXES[axis]}g", "centre of gravity of the items", "length")
+
     def centre_without_canopies(self, axis: int) -> Term:
         """One coordinate of the centre of gravity of platform and items alone."""
         name = f"{AXES[axis]}g"

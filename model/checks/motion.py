@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Sequence
 from functools import cached_property
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Literal
 
 from model.checks.day import Day
 from model.checks.missing import CannotJudge, Missing, need
@@ -16,9 +16,10 @@ from model.rig.rig import Rig
 if TYPE_CHECKING:
     from model.physics.flight import Motion
 
+Rule = Literal["time", "distance"]
 Pick = Callable[["Motion"], float]
 SOURCE = "planar point mass with both filling rules; equations in docs/methods.md"
-RULES = ("time", "distance")
+RULES: tuple[Rule, ...] = ("time", "distance")
 RULE_TEXT = {"time": "tau = t/tf, tf = L/V at line stretch", "distance": "tau = path through the air/L"}
 
 
@@ -36,7 +37,7 @@ class Motions:
         return tuple(self._rows())
 
     @cached_property
-    def rules(self) -> tuple[str, ...]:
+    def rules(self) -> tuple[Rule, ...]:
         """The filling rules that are flown: one where every filling time is measured."""
         return RULES[:1] if all(one.every_time_measured for one in self.rows) else RULES
 
@@ -79,7 +80,7 @@ class Motions:
             depth = known(0.0, "d", "deck thickness", "length", "none given: 0", height.unit)
         else:
             depth = given(platform.depth, "d", "deck thickness", "platform.depth")
-        return derive(balance.rigged_height, height, depth, unit=height.unit)
+        return derive(balance.height_over_underside, height, depth, unit=height.unit)
 
     def _line_stretch(self, first: CanopyRow) -> tuple[str, Term]:
         """How the first row comes to line stretch: a known time, or the distance from the aircraft."""
@@ -159,7 +160,7 @@ class Motions:
                     plan[f"{where} time"] = filling.measured_time
         return plan
 
-    def fly(self, rule: str, *values: float) -> Motion:
+    def fly(self, rule: Rule, *values: float) -> Motion:
         """Fly the plan with its terms at ``values``; a flight already flown is remembered."""
         from model.checks.drop import build
         from model.physics.flight import solve
@@ -172,14 +173,14 @@ class Motions:
             self._flown[key] = solve(drop, rule)
         return self._flown[key]
 
-    def motion(self, rule: str) -> Motion:
+    def motion(self, rule: Rule) -> Motion:
         """The flight under one rule, or `CannotJudge` where it could not be solved to its accuracy."""
         motion = self.fly(rule, *(term.value for term in self.plan.values()))
         if not bool(motion.accurate[0]):
             raise CannotJudge(f"the motion could not be solved to its accuracy ({rule} rule)")
         return motion
 
-    def flown(self, rule: str, pick: Pick, symbol: str, meaning: str, dimension: str, unit: str | None = None) -> Term:
+    def flown(self, rule: Rule, pick: Pick, symbol: str, meaning: str, dimension: str, unit: str | None = None) -> Term:
         """A result of the motion under one rule."""
         self.motion(rule)
         text = f"motion from release to the ground, {rule} rule: {RULE_TEXT[rule]}"

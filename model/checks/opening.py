@@ -82,7 +82,7 @@ def snatch_of(case: Case, one: CanopyRow) -> Term:
     count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
     each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
     stretch = given(need(lines.stretch, one.field("lines.stretch")), "eps", "stretch at break", one.field("lines.stretch"))
-    stiffness = derive(strength.line_stiffness, count, each, stretch, case.motions.line_length(one), of=one.name)
+    stiffness = derive(strength.stretch_stiffness, count, each, stretch, case.motions.line_length(one), of=one.name)
     canopy_mass = given(need(one.row.mass, one.field("mass")), "mc", "mass of one canopy", one.field("mass"))
     load_mass = derive(balance_share, case.masses.suspended, one.count)
     reduced = derive(strength.reduced_mass, canopy_mass, load_mass)
@@ -117,7 +117,7 @@ def _line_total(one: CanopyRow) -> Term:
     lines = need(one.row.lines, one.field("lines"))
     count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
     each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
-    return derive(strength.line_strength, count, each, of=one.name)
+    return derive(strength.lines_strength, count, each, of=one.name)
 
 
 def _snatch(case: Case) -> Outcome:

@@ -4,11 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-from model.checks import balance, descent, height, load, opening, zone
-from model.checks.case import Case
+from model.checks import balance, descent, extraction, height, landing, lashing, load, opening, suspension, zone
 from model.checks.finding import STEP_UNITS
+from model.checks.small_parts import device_steps, service_steps, tie_steps
 from model.checks.step import Step
 from model.quantity import Dimension
+from model.rig.rig import Rig
 
 GROUP_TITLES = {
     "load": "load",
@@ -34,13 +35,32 @@ FIXED: tuple[Step, ...] = (
     *descent.STEPS,
     *opening.STEPS,
     *height.STEPS,
+    *extraction.STEPS,
+    *suspension.STEPS,
+    *landing.STEPS,
+    *lashing.STEPS,
 )
+BY_ROW = {
+    "device.early": "1",
+    "device.late": "1",
+    "device.expires": "d",
+    "service.packs": "1",
+    "service.repack": "d",
+    "service.age": "yr",
+}
+"""Units of limits that hold for a step of every row."""
 
 
-def steps(case: Case) -> list[Step]:
+def steps(rig: Rig) -> list[Step]:
     """The computed steps of one rig."""
-    mains = sum(one.count for one in case.rig.canopy if one.role == "main")
-    return [step for step in FIXED if step.key != "descent.rate_one_out" or mains > 1]
+    mains = sum(one.count for one in rig.canopy if one.role == "main")
+    extracted = rig.exit is not None and rig.exit.method == "extraction"
+    fixed = [
+        step
+        for step in FIXED
+        if (step.key != "descent.rate_one_out" or mains > 1) and (step.group != "extraction" or extracted)
+    ]
+    return [*fixed, *tie_steps(rig), *device_steps(rig), *service_steps(rig)]
 
 
 def unit_of(key: str) -> str | None:
@@ -48,7 +68,9 @@ def unit_of(key: str) -> str | None:
     for step in FIXED:
         if key in (step.key, step.limited_by):
             return step.unit
-    return None
+    if key.startswith("tie.") and key.endswith((".holds", ".breaks")):
+        return "N"
+    return BY_ROW.get(key)
 
 
 def dimension_of(key: str) -> Dimension | None:
@@ -59,7 +81,7 @@ def dimension_of(key: str) -> Dimension | None:
 
 def known_keys() -> Iterable[str]:
     """Every key that a limit may name, for the nearest one in a message."""
-    return [step.limited_by for step in FIXED]
+    return [*(step.limited_by for step in FIXED), *BY_ROW]
 
 
 def group_title(group: str) -> str:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass, field
+from math import isfinite
 
 from model.checks.case import Case
 from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Verdict
@@ -23,6 +24,7 @@ class Outcome:
     fails: str = ""
     measured: bool = False
     opens: str = ""
+    passes: str = ""
 
 
 @dataclass(frozen=True)
@@ -92,20 +94,20 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
         outcome = step.compute(case)
     except Missing as missing:
         return _without_value(step, ruling, Verdict.OPEN, f"data missing: {missing}")
-    except CannotJudge as reason:
-        return _without_value(step, ruling, Verdict.OPEN, str(reason))
-    except Failed as reason:
-        return _without_value(step, ruling, Verdict.FAIL, str(reason))
+    except CannotJudge as cannot:
+        return _without_value(step, ruling, Verdict.OPEN, str(cannot))
+    except Failed as failed:
+        return _without_value(step, ruling, Verdict.FAIL, str(failed))
     value = in_step_unit(outcome.result, step.unit)
     limit = tighter([*outcome.own_limits, *([ruling.limit] if ruling.limit else [])])
-    margin = limit.margin(value) if limit else None
+    margin = limit.margin(value) if limit and isfinite(value) else None
     verdict, reason = _verdict(step, outcome, ruling, limit, value)
     said = [*outcome.cautions, *cautions(outcome.result)]
     if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:
         said.insert(0, f"margin under {CLOSE:.0%}")
     return Finding(
-        key=step.key, title=step.title, kind=Kind.COMPUTED, group=step.group, verdict=verdict, reason=reason, value=value,
-        unit=step.unit, limit=limit, margin=margin, cautions=tuple(dict.fromkeys(said)), result=outcome.result,
+        key=step.key, title=step.title, kind=Kind.COMPUTED, group=step.group, verdict=verdict, reason=reason,
+        value=value if isfinite(value) else None, unit=step.unit, limit=limit, margin=margin, cautions=tuple(dict.fromkeys(said)), result=outcome.result,
         shown_in=(limit.shown_in if limit else None) or outcome.result.unit, notes=outcome.notes,
     )  # fmt: skip
 
@@ -113,13 +115,15 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
 def _verdict(step: Step, outcome: Outcome, ruling: Ruling, limit: Limit | None, value: float) -> tuple[Verdict, str]:
     if not ruling.judged:
         return Verdict.NOT_COUNTED, _unjudged(ruling)
-    if value != value:
+    if not isfinite(value):
         return Verdict.OPEN, "no number comes out of these data"
     if outcome.fails:
         return Verdict.FAIL, outcome.fails
     if outcome.opens:
         return Verdict.OPEN, outcome.opens
     if limit is None:
+        if outcome.passes:
+            return Verdict.PASS, outcome.passes
         if step.for_information:
             return Verdict.NOT_COUNTED, "for information: no limit set"
         return Verdict.OPEN, "no limit set"

@@ -1,0 +1,1 @@
+"""Checklists, workings and curves as text, JSON and pictures."""

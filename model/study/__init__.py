@@ -1,0 +1,1 @@
+"""Studies that repeat the checks."""

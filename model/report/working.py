@@ -1,0 +1,113 @@
+"""The working of a step as lines: every value that leads to it, with its formula, this rig's numbers and the source."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+from model.checks.finding import Finding
+from model.checks.term import Procedure, Term, lines
+from model.physics.formula import CONSTANTS, Formula
+from model.quantity import Dimension, UnitSystem, show, unit_for
+
+FUNCTIONS = ("sqrt", "exp", "ln", "sin", "cos", "tan", "asin", "acos", "atan", "hypot", "min", "max", "abs")
+TOKEN = re.compile(r"\s*([A-Za-z_][A-Za-z_0-9]*|\d+\.?\d*(?:e[+-]?\d+)?|[-+*/^(),=])")
+DIMENSIONS = {str(dimension) for dimension in Dimension}
+
+
+@dataclass(frozen=True, slots=True)
+class Line:
+    """One line of a working: ``symbol = value``, its meaning, and how it came about."""
+
+    term: Term
+    symbol: str
+    value: str
+    meaning: str
+    formula: str = ""
+    numbers: str = ""
+    origin: str = ""
+    source: str = ""
+    holds: str = ""
+    leaves_out: str = ""
+
+
+def term_value(term: Term, system: UnitSystem) -> str:
+    """A term's value in words, in the chosen units."""
+    if term.dimension in DIMENSIONS:
+        dimension = Dimension(term.dimension)
+        return show(term.value, dimension, unit_for(dimension, system, term.unit, term.value))
+    return f"{show(term.value, Dimension.NUMBER, '')} {term.dimension}".strip()
+
+
+def working(finding: Finding, system: UnitSystem) -> list[Line]:
+    """All lines that lead to a finding's value, the value itself last; empty for an inspected step."""
+    if finding.result is None:
+        return []
+    return [_line(term, system) for term in lines(finding.result)]
+
+
+def _line(term: Term, system: UnitSystem) -> Line:
+    how, value = term.how, term_value(term, system)
+    if how is None:
+        return Line(term, term.symbol, value, term.meaning, origin=term.origin)
+    if isinstance(how, Procedure):
+        return Line(term, term.symbol, value, term.meaning, how.text, "", "", how.source, how.holds, how.leaves_out)
+    return Line(
+        term, term.symbol, value, term.meaning, how.text, with_numbers(how, term, system), "", how.source, how.holds,
+        how.leaves_out,
+    )  # fmt: skip
+
+
+def with_numbers(how: Formula[..., object], term: Term, system: UnitSystem) -> str:
+    """The right side of a formula with this rig's numbers and units in place of its symbols."""
+    values = {
+        symbol.text: term_value(one, system) for symbol, one in zip(how.symbols.values(), term.inputs, strict=True)
+    }
+    written = "".join(_written(how.text.split("=", 1)[1], values))
+    return written.replace("( ", "(").strip()
+
+
+def _written(text: str, values: dict[str, str]) -> Iterator[str]:
+    factor_before = False
+    for match in TOKEN.finditer(text):
+        token = match.group(1)
+        starts = token == "(" or token[0].isalnum()
+        if starts and factor_before:
+            yield " x "
+        if token in FUNCTIONS:
+            yield token
+            factor_before = False
+            continue
+        if token[0].isalpha():
+            yield values.get(token, _constant(token))
+        else:
+            yield f" {token} " if token in "+-*=" else f"{token} " if token == "," else token
+        factor_before = token == ")" or token[0].isalnum()
+
+
+def _constant(token: str) -> str:
+    return (
+        show(CONSTANTS[token], Dimension.NUMBER, "") + (" m/s2" if token == "g0" else "")
+        if token in CONSTANTS
+        else token
+    )
+
+
+def working_text(finding: Finding, system: UnitSystem) -> list[str]:
+    """A working as plain lines."""
+    found: list[str] = []
+    for line in working(finding, system):
+        found.append(f"{line.symbol} = {line.value}   {line.meaning}")
+        if line.origin:
+            found.append(f"    from {line.origin}")
+        if line.formula:
+            found.append(f"    {line.formula}")
+        if line.numbers:
+            found.append(f"    = {line.numbers}")
+        for name, text in (("holds", line.holds), ("leaves out", line.leaves_out), ("source", line.source)):
+            if text:
+                found.append(f"    {name}: {text}")
+        found += [f"    note: {note}" for note in line.term.notes]
+    found += [f"note: {note}" for note in finding.notes]
+    return found

@@ -1,0 +1,1 @@
+"""The command line: plain text in and out, no screen."""

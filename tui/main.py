@@ -1,0 +1,50 @@
+"""The one entry point: full screen without a command, plain text with one."""
+
+from __future__ import annotations
+
+import os
+import sys
+from collections.abc import Sequence
+
+from tui.command_line.arguments import COMMANDS, parse
+
+INTERRUPTED, PIPE_CLOSED = 130, 141
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run rigslate and return its exit status."""
+    words = list(sys.argv[1:] if arguments is None else arguments)
+    _plain_streams()
+    try:
+        status = _run(words)
+        sys.stdout.flush()
+    except KeyboardInterrupt:
+        return INTERRUPTED
+    except BrokenPipeError:
+        # The reader of the pipe has gone; what Python still holds must not be flushed into it at exit.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return PIPE_CLOSED
+    return status
+
+
+def _run(words: list[str]) -> int:
+    if words and words[0] in COMMANDS:
+        options = parse(words)
+        module = __import__(f"tui.command_line.{options.command}", fromlist=["run"])
+        status: int = module.run(options)
+        return status
+    from tui.command_line.screen import run
+
+    return run(parse(["screen", *words]))
+
+
+def _plain_streams() -> None:
+    """A console that lacks a character shows a mark in its place instead of ending the program."""
+    for stream in (sys.stdout, sys.stderr):
+        reconfigure = getattr(stream, "reconfigure", None)
+        if reconfigure is not None:
+            reconfigure(errors="replace")
+
+
+if __name__ == "__main__":
+    sys.exit(main())
