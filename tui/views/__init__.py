@@ -1,0 +1,1 @@
+"""What the screens say: pure functions from state to rows of spans."""

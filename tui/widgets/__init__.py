@@ -1,0 +1,1 @@
+"""Small widgets; what they show is made by pure functions."""
