@@ -35,5 +35,7 @@ def _slenderness(case: Case) -> Outcome:
 STEPS = (
     Step("balance.forward", "Centre of gravity forward of the middle", "m", _forward),
     Step("balance.side", "Centre of gravity left of the middle", "m", _side_step),
-    Step("balance.slenderness", "Height of the centre of gravity over the base", "1", _slenderness, tables=("platform",)),
+    Step(
+        "balance.slenderness", "Height of the centre of gravity over the base", "1", _slenderness, tables=("platform",)
+    ),
 )

@@ -117,7 +117,9 @@ def _known_parts(loaded: Loaded, findings: Sequence[Finding]) -> None:
     """Refuse a left-out part that names no table, no group and no step."""
     known = {*TABLES, *(one.group for one in findings), *(one.key for one in findings)}
     problems = [
-        loaded.rig.problem(("left_out", i, "part"), f'"{one.part}"', "a table, a group of steps or a step key", _near(one.part, known))
+        loaded.rig.problem(
+            ("left_out", i, "part"), f'"{one.part}"', "a table, a group of steps or a step key", _near(one.part, known)
+        )
         for i, one in enumerate(loaded.rig.rig.left_out)
         if one.part not in known
     ]
@@ -136,9 +138,15 @@ def _left_out(finding: Finding, case: Case, tables: tuple[str, ...]) -> Finding:
     for part in case.rig.left_out:
         if part.part in names:
             return replace(
-                finding, verdict=Verdict.NOT_COUNTED, reason=f"left out: {part.why}", value=None, margin=None, cautions=(),
-                result=None, notes=(),
-            )  # fmt: skip
+                finding,
+                verdict=Verdict.NOT_COUNTED,
+                reason=f"left out: {part.why}",
+                value=None,
+                margin=None,
+                cautions=(),
+                result=None,
+                notes=(),
+            )
     return finding
 
 

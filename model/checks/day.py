@@ -6,7 +6,7 @@ from collections.abc import Callable
 from functools import cached_property, lru_cache
 
 from model.checks.missing import need
-from model.checks.term import Procedure, Term, combine, derive, given, known, total
+from model.checks.term import Procedure, Term, combine, derive, given, known, read, total
 from model.physics import air
 from model.physics.day_air import DayAir
 from model.physics.types import Real
@@ -30,7 +30,7 @@ class Day:
     @cached_property
     def elevation(self) -> Term:
         """Height of the zone above mean sea level."""
-        return given(need(self.drop.zone_elevation, "drop.zone_elevation"), "z0", "drop zone elevation", "drop.zone_elevation")
+        return read(self.drop.zone_elevation, "z0", "drop zone elevation", "drop.zone_elevation")
 
     @cached_property
     def release_height(self) -> Term:
@@ -62,7 +62,7 @@ class Day:
     @cached_property
     def pressure(self) -> Term:
         """Pressure at the zone."""
-        return derive(air.station_pressure, self.setting, self.zone_height, of="the zone", unit="hPa")
+        return derive(air.station_pressure, self.setting, self.zone_height, unit="hPa")
 
     @cached_property
     def vapour(self) -> Term:
@@ -81,7 +81,7 @@ class Day:
     def density_altitude(self) -> Term:
         """Standard geometric altitude of the zone's density."""
         height = derive(air.density_height, self.density)
-        return derive(air.geometric_altitude, height, of="density altitude", unit=self.elevation.unit)
+        return derive(air.geometric_altitude, height, of="density altitude of the zone", unit=self.elevation.unit)
 
     @cached_property
     def inputs(self) -> tuple[Term, ...]:
@@ -106,9 +106,18 @@ class Day:
         ]
         return day_air(values[0], *chosen)
 
-    def aloft(self, pick: Callable[[DayAir, float], Real], text: str, at: Term, symbol: str, meaning: str,
-              dimension: str, unit: str | None = None) -> Term:
+    def aloft(
+        self,
+        pick: Callable[[DayAir, float], Real],
+        text: str,
+        at: Term,
+        symbol: str,
+        meaning: str,
+        dimension: str,
+        unit: str | None = None,
+    ) -> Term:
         """A property of the air at a height."""
+
         def function(height: float, *values: float) -> float:
             return float(pick(self.air(*values), height))
 
@@ -123,8 +132,12 @@ class Day:
     @cached_property
     def release_density(self) -> Term:
         """Density at release."""
-        text = "rho(z): pressure hydrostatic from the zone, temperature standard + the zone's offset, e/p as at the zone"
-        return self.aloft(lambda day, z: day.density(z), text, self.release_altitude, "rho", "density at release", "density")
+        text = (
+            "rho(z): pressure hydrostatic from the zone, temperature standard + the zone's offset, e/p as at the zone"
+        )
+        return self.aloft(
+            lambda day, z: day.density(z), text, self.release_altitude, "rho", "density at release", "density"
+        )
 
     def winds(self) -> tuple[tuple[Term, Term], ...]:
         """Heights above the zone and winds along the run-in, heights rising; empty where none is given."""
@@ -145,5 +158,8 @@ class Day:
             return ((ground, surface),)
         return (
             (ground, surface),
-            (self.release_height, given(drop.release_wind, "W2", "wind at release along the run-in", "drop.release_wind")),
+            (
+                self.release_height,
+                given(drop.release_wind, "W2", "wind at release along the run-in", "drop.release_wind"),
+            ),
         )

@@ -33,7 +33,7 @@ def end_area(case: Case) -> Term:
 
 def rate(case: Case) -> Term:
     """Steady rate of descent in the air of the zone."""
-    return derive(drag.terminal_speed, case.masses.falling, case.day.density, end_area(case), of="steady rate of descent at the zone")
+    return derive(drag.terminal_speed, case.masses.falling, case.day.density, end_area(case), of="air of the zone")
 
 
 def _rate(case: Case) -> Outcome:
@@ -57,9 +57,7 @@ def _rate_one_out(case: Case) -> Outcome:
         missing = derive(canopy.drag_area_one_out, worst.full_area, worst.count, of=f"{worst.name}, one canopy out")
         areas = [missing if one is worst else one.full_area for one in rows]
     area = areas[0] if len(areas) == 1 else total(areas, "CdS", "drag area with one canopy out")
-    result = derive(
-        drag.terminal_speed, case.masses.falling, case.day.density, area, of="rate of descent with one canopy out"
-    )
+    result = derive(drag.terminal_speed, case.masses.falling, case.day.density, area, of="one canopy out")
     return Outcome(result, measured=rate_is_measured(case), cautions=_measured_cautions(rows))
 
 

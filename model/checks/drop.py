@@ -18,9 +18,7 @@ def build(values: Mapping[str, float], rig: Rig, day: Day, rows: Sequence[Canopy
     """A drop from the values of `Motions.plan`."""
     weather = [values[f"air {i}"] for i in range(len(day.inputs))]
     air = day.air(*weather)
-    winds = tuple(
-        (values[f"wind {i} height"], values[f"wind {i} speed"]) for i in range(len(day.winds()))
-    )
+    winds = tuple((values[f"wind {i} height"], values[f"wind {i} speed"]) for i in range(len(day.winds())))
     return Drop(
         mass=values["mass"],
         airspeed=values["airspeed"],

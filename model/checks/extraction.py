@@ -5,7 +5,7 @@ from __future__ import annotations
 from model.checks.case import Case
 from model.checks.missing import need
 from model.checks.step import Outcome, Step
-from model.checks.term import Term, derive, given, known
+from model.checks.term import Term, derive, given, known, read, read_count
 from model.physics import air, drag, extraction, strength
 from model.rig.canopy_table import lookup
 from model.rig.rig import Extraction
@@ -20,7 +20,7 @@ def _field(name: str) -> str:
 
 
 def _pressure(case: Case) -> Term:
-    speed = given(need(case.rig.drop.airspeed, "drop.airspeed"), "Vi", "indicated airspeed", "drop.airspeed")
+    speed = read(case.rig.drop.airspeed, "Vi", "indicated airspeed", "drop.airspeed")
     density = known(air.SEA_LEVEL_DENSITY, "rho0", "sea level density", "density", "definition of indicated airspeed")
     return derive(drag.dynamic_pressure, density, speed)
 
@@ -40,10 +40,15 @@ def _coefficient(case: Case, name: str, symbol: str, meaning: str) -> Term:
 def _pull(case: Case) -> tuple[Term, Term, Term]:
     """Dynamic pressure, drag area of one and count."""
     parachute = _parachute(case)
-    diameter = given(need(parachute.diameter, _field("diameter")), "D0", "diameter of the extraction parachute", _field("diameter"))
+    diameter = read(parachute.diameter, "D0", "diameter of the extraction parachute", _field("diameter"))
     nominal = derive(drag.circle_area, diameter, of="extraction parachute")
-    area = derive(drag.drag_area, _coefficient(case, "drag_coefficient", "CD0", "drag coefficient"), nominal, of="extraction parachute")
-    count = known(need(parachute.count, _field("count")), "N", "extraction parachutes", "number", _field("count"))
+    area = derive(
+        drag.drag_area,
+        _coefficient(case, "drag_coefficient", "CD0", "drag coefficient"),
+        nominal,
+        of="extraction parachute",
+    )
+    count = read_count(parachute.count, "N", "extraction parachutes", _field("count"))
     return _pressure(case), area, count
 
 
@@ -52,9 +57,11 @@ def _ratio(case: Case) -> Outcome:
 
 
 def _against(case: Case, name: str, meaning: str) -> Outcome:
-    allowed = given(need(getattr(_parachute(case), name), _field(name)), "S", meaning, _field(name))
+    allowed = read(getattr(_parachute(case), name), "S", meaning, _field(name))
     load = derive(
-        extraction.extraction_line_load, *_pull(case), _coefficient(case, "opening_coefficient", "Cx", "opening coefficient")
+        extraction.extraction_line_load,
+        *_pull(case),
+        _coefficient(case, "opening_coefficient", "Cx", "opening coefficient"),
     )
     return Outcome(derive(strength.strength_ratio, allowed, load, of=meaning))
 

@@ -191,9 +191,7 @@ class Checklist:
     @property
     def worst(self) -> Finding | None:
         """The counted computed step with the least margin."""
-        counted = [
-            f for f in self.findings if f.margin is not None and f.verdict in (Verdict.PASS, Verdict.FAIL)
-        ]
+        counted = [f for f in self.findings if f.margin is not None and f.verdict in (Verdict.PASS, Verdict.FAIL)]
         return min(counted, key=lambda finding: finding.margin or 0.0, default=None)
 
 

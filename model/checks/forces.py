@@ -14,7 +14,9 @@ from model.physics import canopy
 LANDS_FIRST = "lands before it is open"
 RATIO_PATH, RATIO_SPEED = 0.45, 1.1
 OUTSIDE = "filling estimate outside its range: use a measured filling time or force"
-NOT_CHECKED = "handbook fill constant, growth exponent and opening coefficient: not checked against a measured cargo drop"
+NOT_CHECKED = (
+    "handbook fill constant, growth exponent and opening coefficient: not checked against a measured cargo drop"
+)
 
 
 class Forces:
@@ -54,7 +56,9 @@ class Forces:
             if figures.rate is not None and not one.measured_rate_used:
                 found.append(f"{one.name}: measured rate not used, its mass is more than 10 % from this one's")
             if figures.opening_force is not None and self.measured(one) is None:
-                found.append(f"{one.name}: measured force not used, its mass or speed is more than 10 % from this one's")
+                found.append(
+                    f"{one.name}: measured force not used, its mass or speed is more than 10 % from this one's"
+                )
         return tuple(found)
 
     @cached_property
@@ -97,7 +101,9 @@ class Forces:
             for number in range(sum(len(one.fillings) for one in self.motions.rows))
             for term in self.motions.both(
                 lambda motion, number=number: motion.opening_force_plain[number, 0],  # type: ignore[misc]
-                f"f{number + 1}", f"filling {number + 1} without Cx", "force",
+                f"f{number + 1}",
+                f"filling {number + 1} without Cx",
+                "force",
             )
         ]
         return largest(both, "f", "largest force without the opening coefficient")
@@ -124,18 +130,14 @@ class Forces:
     @cached_property
     def cautions(self) -> tuple[str, ...]:
         """What must be said beside every number that rests on a filling estimate."""
-        found = [
-            f"{OUTSIDE} ({name})"
-            for name, path, speed in self.ratios
-            if path < RATIO_PATH or speed > RATIO_SPEED
-        ]
+        found = [f"{OUTSIDE} ({name})" for name, path, speed in self.ratios if path < RATIO_PATH or speed > RATIO_SPEED]
         motion = self.motions.motion("time")
         number = 0
         for one in self.motions.rows:
             if not one.every_time_measured and self.measured(one) is None and not self._in_class(one):
                 found.append(
-                    f"{one.name}: outside the class of the handbook figures (solid cloth, 28 to 100 ft, 0.5 to 2 lb/ft2, "
-                    "not made to open fast): real forces may be over twice the estimate"
+                    f"{one.name}: outside the class of the handbook figures (solid cloth, 28 to 100 ft, "
+                    "0.5 to 2 lb/ft2, not made to open fast): real forces may be over twice the estimate"
                 )
             for filling in one.fillings:
                 if bool(motion.started[number, 0]) and not bool(motion.full[number, 0]):

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
-from model.checks.term import Procedure, Term, combine, derive, given, known
+from model.checks.term import Procedure, Term, combine, derive, given, known, read, read_count
 from model.physics import hanging, sling, strength
 from model.physics.hanging import Hang, Outcome
 from model.rig.parts import Leg
@@ -18,12 +18,13 @@ if TYPE_CHECKING:
     from model.checks.case import Case
 
 BALANCE_TEXT = (
-    "sum of t_i d_i = F e; with more than three legs t_i = k_i d_i . delta, k_i = plies x strength/length, slack legs dropped"
+    "sum of t_i d_i = F e; with more than three legs t_i = k_i d_i . delta, k_i = plies x strength/length, "
+    "slack legs dropped"
 )
 BALANCE_SOURCE = "statics; elastic legs on a rigid body"
 CAUTIOUS = (
-    "holds for a load hanging in line with the pull; at the first peak the canopies pull aft on a level load and the aft "
-    "legs carry most, so two legs is the cautious reading"
+    "holds for a load hanging in line with the pull; at the first peak the canopies pull aft on a level load and the "
+    "aft legs carry most, so two legs is the cautious reading"
 )
 
 
@@ -76,10 +77,14 @@ class Hanging:
             ]
             return terms[0], terms[1], terms[2]
         lengths = [
-            given(need(leg.length, f"suspension.apex, or {self.field(i, 'length')}"), f"L{i + 1}",
-                  f"length of leg {i + 1}", self.field(i, "length"))
+            given(
+                need(leg.length, f"suspension.apex, or {self.field(i, 'length')}"),
+                f"L{i + 1}",
+                f"length of leg {i + 1}",
+                self.field(i, "length"),
+            )
             for i, leg in enumerate(self.legs)
-        ]  # fmt: skip
+        ]
         places = self.places()
 
         def coordinate(axis: int) -> Term:
@@ -98,12 +103,17 @@ class Hanging:
             reading = need(leg.at, self.field(i, "at"))
             place = point(rig, reading)
             inputs += [
-                known(place[k], f"{axis}{i + 1}", f"{axis} of leg {i + 1} ({leg.name})", "length", self.field(i, "at"), reading[k].unit)
+                known(
+                    place[k],
+                    f"{axis}{i + 1}",
+                    f"{axis} of leg {i + 1} ({leg.name})",
+                    "length",
+                    self.field(i, "at"),
+                    reading[k].unit,
+                )
                 for k, axis in enumerate("xyz")
             ]
-            inputs.append(
-                given(need(leg.strength, self.field(i, "strength")), "S", f"strength of one ply, leg {i + 1}", self.field(i, "strength"))
-            )
+            inputs.append(read(leg.strength, "S", f"strength of one ply, leg {i + 1}", self.field(i, "strength")))
             inputs.append(self.plies(i))
         inputs += self.apex
         inputs += [self.case.masses.centre_without_canopies(axis) for axis in range(3)]
@@ -112,7 +122,7 @@ class Hanging:
     def plies(self, i: int) -> Term:
         """Thicknesses of a leg's web."""
         field = self.field(i, "plies")
-        return known(need(self.legs[i].plies, field), "n", f"plies of leg {i + 1}", "number", field)
+        return read_count(self.legs[i].plies, "n", f"plies of leg {i + 1}", field)
 
     @cached_property
     def turn(self) -> Term:
@@ -130,7 +140,7 @@ class Hanging:
         """How many legs are taken to share the load."""
         suspension = self.case.rig.suspension
         field = "suspension.legs_carrying"
-        return known(need(suspension.legs_carrying if suspension else None, field), "c", "legs carrying", "number", field)
+        return read_count(suspension.legs_carrying if suspension else None, "c", "legs carrying", field)
 
     @cached_property
     def loads(self) -> tuple[Term, ...]:
@@ -150,17 +160,23 @@ class Hanging:
             )
             unit = leg.strength.unit if leg.strength else None
             tension = combine(how, inputs, f"t{i + 1}", f"tension of leg {i + 1} ({leg.name})", "force", unit)
-            found.append(derive(sling.carrying_load, tension, legs, self.carrying, of=f"leg {i + 1} ({leg.name})", symbol=f"T{i + 1}"))
+            found.append(
+                derive(
+                    sling.carrying_load,
+                    tension,
+                    legs,
+                    self.carrying,
+                    of=f"leg {i + 1} ({leg.name})",
+                    symbol=f"T{i + 1}",
+                )
+            )
         return tuple(found)
 
     def strength(self, i: int) -> Term:
         """Strength of a leg: web, plies and its worst joint."""
         leg = self.legs[i]
-        each = given(need(leg.strength, self.field(i, "strength")), "S", f"strength of one ply, leg {i + 1}", self.field(i, "strength"))
-        joint = given(
-            need(leg.joint_efficiency, self.field(i, "joint_efficiency")), "eta", f"joint efficiency, leg {i + 1}",
-            self.field(i, "joint_efficiency"),
-        )  # fmt: skip
+        each = read(leg.strength, "S", f"strength of one ply, leg {i + 1}", self.field(i, "strength"))
+        joint = read(leg.joint_efficiency, "eta", f"joint efficiency, leg {i + 1}", self.field(i, "joint_efficiency"))
         return derive(strength.leg_strength, each, self.plies(i), joint, of=f"leg {i + 1} ({leg.name})")
 
     def geometry(self, axis_tilt: bool) -> list[Term]:
@@ -168,13 +184,24 @@ class Hanging:
         inputs = self._inputs(known(1.0, "F", "any pull", "force", "the angles do not depend on it"))
         count = len(self.legs)
         if axis_tilt:
-            how = Procedure("angle between the deck's normal and the line from the centre of gravity to the confluence point",
-                            lambda *values: float(solve(tuple(values), count).tilt), "geometry")  # fmt: skip
+            how = Procedure(
+                "angle between the deck's normal and the line from the centre of gravity to the confluence point",
+                lambda *values: float(solve(tuple(values), count).tilt),
+                "geometry",
+            )
             return [combine(how, inputs, "a", "tilt of the pull's axis", "angle", "deg")]
         return [
             combine(
-                Procedure("b = asin(rise/length)", lambda *values, i=i: float(solve(tuple(values), count).angles[i]), "geometry"),
-                inputs, f"b{i + 1}", f"angle of leg {i + 1} ({leg.name}) over the deck plane", "angle", "deg",
-            )  # fmt: skip
+                Procedure(
+                    "b = asin(rise/length)",
+                    lambda *values, i=i: float(solve(tuple(values), count).angles[i]),
+                    "geometry",
+                ),
+                inputs,
+                f"b{i + 1}",
+                f"angle of leg {i + 1} ({leg.name}) over the deck plane",
+                "angle",
+                "deg",
+            )
             for i, leg in enumerate(self.legs)
         ]

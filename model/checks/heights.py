@@ -43,9 +43,13 @@ class Heights:
             raise Failed("lands before it has slowed to 1.05 of its steady rate")
         release = self.motions.day.release_height
         height = self.motions.flown(
-            rule, lambda motion: motion.slow_height[0], "hs", "height at which V is down to 1.05 of the steady rate",
-            "length", release.unit,
-        )  # fmt: skip
+            rule,
+            lambda motion: motion.slow_height[0],
+            "hs",
+            "height at which V is down to 1.05 of the steady rate",
+            "length",
+            release.unit,
+        )
         return combine(LESS, [release, height], "dh", f"height lost in the motion, {rule} rule", "length", release.unit)
 
     @cached_property
@@ -56,9 +60,13 @@ class Heights:
             return None
         lengths = self.motions.line_length(last), self.motions.riser(last)
         angle = self.motions.flown(
-            self.rule, lambda motion: motion.line_stretch_angle[last.index, 0], "gamma",
-            f"path angle at line stretch, {last.name}", "angle", "deg",
-        )  # fmt: skip
+            self.rule,
+            lambda motion: motion.line_stretch_angle[last.index, 0],
+            "gamma",
+            f"path angle at line stretch, {last.name}",
+            "angle",
+            "deg",
+        )
         return derive(canopy.swing_allowance, *lengths, angle, unit=self.motions.day.release_height.unit)
 
     @cached_property
@@ -74,4 +82,3 @@ class Heights:
         """Release height less the loss."""
         release = self.motions.day.release_height
         return combine(LESS, [release, self.loss], "hr", "height left when open", "length", release.unit)
-

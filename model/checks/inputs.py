@@ -26,7 +26,11 @@ def _air(rig_file: RigFile) -> list[InputProblem]:
         problems.append(rig_file.problem(("drop", "zone_elevation"), f'"{drop.zone_elevation.text}"', expected))
     elif drop.zone_elevation is not None and drop.dew_point is not None:
         temperature = drop.zone_temperature
-        here = temperature.value if temperature else air.standard_temperature(air.geopotential_height(drop.zone_elevation.value))
+        here = (
+            temperature.value
+            if temperature
+            else air.standard_temperature(air.geopotential_height(drop.zone_elevation.value))
+        )
         if day_air.dew_point_over(drop.dew_point.value, float(here)):
             expected = "a dew point not over the temperature at the zone"
             problems.append(rig_file.problem(("drop", "dew_point"), f'"{drop.dew_point.text}"', expected))

@@ -15,22 +15,39 @@ def find(inspection: limits.Inspection, standing: Standing | None) -> Finding:
     answer = None
     if entry is not None and standing is not None:
         answer = Answer(
-            entry.answer or "", entry.who, entry.when, entry.second or "", entry.remark or "", entry.value or "",
+            entry.answer or "",
+            entry.who,
+            entry.when,
+            entry.second or "",
+            entry.remark or "",
+            entry.value or "",
             standing.stale,
-        )  # fmt: skip
+        )
     verdict, reason = _verdict(inspection, answer)
     cautions = (inspection.caution,) if inspection.caution else ()
     return Finding(
-        key=inspection.key, title=inspection.ask, kind=Kind.INSPECTED, group=inspection.key.split(".", 1)[0],
-        verdict=verdict, reason=reason, cautions=cautions, inspection=_asked(inspection), answer=answer,
-    )  # fmt: skip
+        key=inspection.key,
+        title=inspection.ask,
+        kind=Kind.INSPECTED,
+        group=inspection.key.split(".", 1)[0],
+        verdict=verdict,
+        reason=reason,
+        cautions=cautions,
+        inspection=_asked(inspection),
+        answer=answer,
+    )
 
 
 def _asked(inspection: limits.Inspection) -> Inspection:
     return Inspection(
-        inspection.ask, inspection.stage or "", bool(inspection.stop), bool(inspection.two_person),
-        inspection.answer or "", inspection.caution or "", tuple(inspection.covers or ()),
-    )  # fmt: skip
+        inspection.ask,
+        inspection.stage or "",
+        bool(inspection.stop),
+        bool(inspection.two_person),
+        inspection.answer or "",
+        inspection.caution or "",
+        tuple(inspection.covers or ()),
+    )
 
 
 def _verdict(inspection: limits.Inspection, answer: Answer | None) -> tuple[Verdict, str]:

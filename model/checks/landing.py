@@ -9,7 +9,7 @@ from model.checks.case import Case
 from model.checks.descent import rate_is_measured, vertical_at_touchdown
 from model.checks.missing import CannotJudge, Missing, need, row
 from model.checks.step import Outcome, Step
-from model.checks.term import LESS, SAME, Procedure, Term, combine, derive, given, known, least, total
+from model.checks.term import LESS, SAME, Procedure, Term, combine, derive, known, least, read, read_count, total
 from model.physics import cushion, overturn
 from model.physics.formula import formula
 from model.physics.types import Real
@@ -45,7 +45,7 @@ class Cushioning:
 
     def _given(self, i: int, name: str, symbol: str, meaning: str) -> Term:
         found: Quantity | None = getattr(self.case.rig.cushion[i], name)
-        return given(need(found, self._field(i, name)), symbol, f"{meaning}, {self.case.rig.cushion[i].name}", self._field(i, name))
+        return read(found, symbol, f"{meaning}, {self.case.rig.cushion[i].name}", self._field(i, name))
 
     @cached_property
     def under_load(self) -> bool:
@@ -57,9 +57,11 @@ class Cushioning:
         """Crush force of every row."""
         return tuple(
             derive(
-                cushion.stack_force, self._given(i, "crush_stress", "sigma", "crush stress"), self._given(i, "area", "A", "area"),
+                cushion.stack_force,
+                self._given(i, "crush_stress", "sigma", "crush stress"),
+                self._given(i, "area", "A", "area"),
                 of=one.name,
-            )  # fmt: skip
+            )
             for i, one in enumerate(self.case.rig.cushion)
         )
 
@@ -74,7 +76,14 @@ class Cushioning:
         suspended = self.case.masses.suspended
         platform = self.case.masses.platform
         if self.under_load and platform is not None:
-            return combine(LESS, [suspended, platform], "m", "mass over the stack: the platform lies under it", "mass", suspended.unit)
+            return combine(
+                LESS,
+                [suspended, platform],
+                "m",
+                "mass over the stack: the platform lies under it",
+                "mass",
+                suspended.unit,
+            )
         return combine(SAME, [suspended], "m", "mass over the stack", "mass", suspended.unit)
 
     @cached_property
@@ -97,12 +106,15 @@ class Cushioning:
         """Usable stroke of the thinnest row."""
         strokes = []
         for i, one in enumerate(self.case.rig.cushion):
-            layers = known(need(one.layers, self._field(i, "layers")), "n", f"layers, {one.name}", "number", self._field(i, "layers"))
+            layers = read_count(one.layers, "n", f"layers, {one.name}", self._field(i, "layers"))
             strokes.append(
                 derive(
-                    cushion.usable_stroke, layers, self._given(i, "layer_thickness", "t", "layer thickness"),
-                    self._given(i, "usable_strain", "eps", "usable strain"), of=one.name,
-                )  # fmt: skip
+                    cushion.usable_stroke,
+                    layers,
+                    self._given(i, "layer_thickness", "t", "layer thickness"),
+                    self._given(i, "usable_strain", "eps", "usable strain"),
+                    of=one.name,
+                )
             )
         return least(strokes, "su", "usable stroke of the thinnest row")
 
@@ -139,7 +151,7 @@ def _fragility(case: Case) -> Outcome:
     factors = []
     for i, item in items:
         field = row("item", i, item.name, "fragility")
-        fragility = given(need(item.fragility, field), "a", f"fragility of {item.name}", field)
+        fragility = read(item.fragility, "a", f"fragility of {item.name}", field)
         factors.append(derive(fragility_ratio, fragility, stacks.net, of=item.name))
     without = [item.name for item in case.rig.item if item.fragility is None]
     said = (f"no fragility given: {', '.join(without)}",) if without else ()
@@ -149,7 +161,10 @@ def _fragility(case: Case) -> Outcome:
 @formula(
     "k = a/(G g0)",
     result="k | fragility/net deceleration | number",
-    symbols={"fragility": "a | largest net deceleration allowed | acceleration", "net": "G | net deceleration | number"},
+    symbols={
+        "fragility": "a | largest net deceleration allowed | acceleration",
+        "net": "G | net deceleration | number",
+    },
     source="definition",
 )
 def fragility_ratio(fragility: Real, net: Real) -> Real:
@@ -172,17 +187,27 @@ def _centre(case: Case) -> Outcome:
         field = row("cushion", i, one.name, "at")
         reading = need(one.at, field)
         place = plan_point(case.rig, reading)
-        places.append([known(place[k], "xy"[k], f"{'xy'[k]} of {one.name}", "length", field, reading[k].unit) for k in (0, 1)])
+        places.append(
+            [known(place[k], "xy"[k], f"{'xy'[k]} of {one.name}", "length", field, reading[k].unit) for k in (0, 1)]
+        )
     offsets = []
     for axis in (0, 1):
         how = Procedure("sum of crush force x coordinate / sum of crush force", _weighted, "statics")
         centre = combine(
-            how, [*stacks.forces, *(place[axis] for place in places)], f"{'xy'[axis]}c", f"{'xy'[axis]} of the crush force", "length"
+            how,
+            [*stacks.forces, *(place[axis] for place in places)],
+            f"{'xy'[axis]}c",
+            f"{'xy'[axis]} of the crush force",
+            "length",
         )
         above = case.masses.centre_above(axis, platform=not stacks.under_load)
-        offsets.append(combine(LESS, [centre, above], f"d{'xy'[axis]}", f"offset in {'xy'[axis]}", "length", places[0][axis].unit))
+        offsets.append(
+            combine(LESS, [centre, above], f"d{'xy'[axis]}", f"offset in {'xy'[axis]}", "length", places[0][axis].unit)
+        )
     how = Procedure("d = hypot(dx, dy)", lambda dx, dy: (dx * dx + dy * dy) ** 0.5, "geometry")
-    return Outcome(combine(how, offsets, "d", "crush-force centre from the centre of gravity above it", "length", offsets[0].unit))
+    return Outcome(
+        combine(how, offsets, "d", "crush-force centre from the centre of gravity above it", "length", offsets[0].unit)
+    )
 
 
 def _weighted(*values: float) -> float:
@@ -195,7 +220,7 @@ def speed_across(case: Case) -> Term:
     winds = case.day.winds()
     if not winds:
         raise Missing("drop.surface_wind")
-    how = Procedure("size of the wind at the ground", lambda wind: abs(wind), "definition")
+    how = Procedure("size of the wind at the ground", abs, "definition")
     return combine(how, [winds[0][1]], "vx", "speed across the ground at landing", "speed", winds[0][1].unit)
 
 

@@ -8,15 +8,15 @@ from functools import lru_cache
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
 from model.checks.step import Outcome, Step
-from model.checks.term import LESS, Procedure, Term, combine, derive, given, known
+from model.checks.term import LESS, Procedure, Term, combine, derive, given, known, read_count
 from model.physics import lashing
 from model.physics.lashing import Hold, Mirror
 from model.rig.parts import Lashing
 from model.rig.rig import point
 
 HELD_TEXT = (
-    "sum of the pull components against the direction; a pull is count x min(device, deck fitting, load fitting) from load "
-    "point to deck point, a shared ring scales its pulls"
+    "sum of the pull components against the direction; a pull is count x min(device, deck fitting, load fitting) from "
+    "load point to deck point, a shared ring scales its pulls"
 )
 SHARING = "lashings share a deck point without naming one ring: give them a deck_ring"
 
@@ -29,9 +29,16 @@ def hold(rows: tuple[tuple[str, Mirror, str], ...], values: tuple[float, ...]) -
         one = values[10 * k : 10 * k + 10]
         made.append(
             lashing.Row(
-                deck=(one[0], one[1], one[2]), load=(one[3], one[4], one[5]), count=int(one[6]), device=one[7],
-                deck_fitting=one[8], load_fitting=one[9], kind=kind, mirror=mirror, ring=ring,
-            )  # fmt: skip
+                deck=(one[0], one[1], one[2]),
+                load=(one[3], one[4], one[5]),
+                count=int(one[6]),
+                device=one[7],
+                deck_fitting=one[8],
+                load_fitting=one[9],
+                kind=kind,
+                mirror=mirror,
+                ring=ring,
+            )
         )
     return lashing.hold(made)
 
@@ -62,7 +69,7 @@ class Lashings:
                 known(place[k], axis, f"{axis} of the {name} point, {one.name}", "length", field(name), reading[k].unit)
                 for k, axis in enumerate("xyz")
             ]
-        self.inputs.append(known(need(one.count, field("count")), "n", f"count, {one.name}", "number", field("count")))
+        self.inputs.append(read_count(one.count, "n", f"count, {one.name}", field("count")))
         for name in ("device", "deck_fitting", "load_fitting"):
             strength = need(getattr(one, name), field(name))
             self.inputs.append(given(strength, name[0].upper(), f"{name.replace('_', ' ')}, {one.name}", field(name)))
@@ -85,7 +92,8 @@ class Lashings:
             device, *fittings = self.inputs[10 * i + 7 : 10 * i + 10]
             weakest = min(fittings, key=lambda term: term.value)
             if weakest.value < device.value:
-                found.append(f"{row('lashing', i, one.name)}: the {weakest.meaning.split(',')[0]} is weaker than the device and counts")
+                part = weakest.meaning.split(",")[0]
+                found.append(f"{row('lashing', i, one.name)}: the {part} is weaker than the device and counts")
         found += [f"ring {name}: its lashings pull more than it holds and count for less" for name in held.overloaded]
         names = [one.name for one in self.case.rig.lashing]
         found += [f"{names[i]} and {names[j]}: {SHARING}" for i, j in held.unnamed_sharing]
@@ -106,7 +114,9 @@ def _direction(direction: str) -> Callable[[Case], Outcome]:
         if restraint is None:
             raise CannotJudge("no limit set: the limit set has no [restraint]")
         factor = need(getattr(restraint, direction), f"restraint.{direction}")
-        term = given(factor, "a", f"restraint factor {direction}, {restraint.source}", f"limit set, restraint.{direction}")
+        term = given(
+            factor, "a", f"restraint factor {direction}, {restraint.source}", f"limit set, restraint.{direction}"
+        )
         if term.value == 0:
             raise CannotJudge(f"restraint.{direction} is 0: nothing is asked for")
         needed_mass = restrained(case)
@@ -125,15 +135,23 @@ def _weight(mass: Term) -> Term:
 def _mixed(case: Case) -> Outcome:
     held = case.lashings.hold()
     if held.mixed:
-        raise Failed(f"straps and chains share a direction: {', '.join(held.mixed)}; the stiffer chain takes the load first")
+        raise Failed(
+            f"straps and chains share a direction: {', '.join(held.mixed)}; the stiffer chain takes the load first"
+        )
     count = known(0.0, "n", "directions shared by straps and chains", "number", "lashing rows")
     return Outcome(count, passes="no direction is shared by straps and chains")
 
 
 STEPS = (
     *(
-        Step(f"lashing.{direction}", f"Held against {direction} over what is asked for", "1", _direction(direction), tables=("lashing",))
+        Step(
+            f"lashing.{direction}",
+            f"Held against {direction} over what is asked for",
+            "1",
+            _direction(direction),
+            tables=("lashing",),
+        )
         for direction in ("forward", "aft", "left", "right", "up")
     ),
-    Step("lashing.mixed", "Straps and chains apart", "1", _mixed, tables=("lashing",)),
+    Step("lashing.mixed", "Straps and chains apart", None, _mixed, tables=("lashing",)),
 )

@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from model.checks.case import Case
-from model.checks.missing import Failed, Missing, need
+from model.checks.missing import Failed, Missing
 from model.checks.step import Outcome, Step, own_limit
-from model.checks.term import SAME, Term, combine, derive, given, known, total
+from model.checks.term import SAME, Term, combine, derive, given, known, read, total
 from model.physics import balance
 
 
@@ -23,7 +23,7 @@ def _weighed(case: Case) -> Outcome:
 def side(case: Case, name: str) -> Term:
     """A side of the platform."""
     size = getattr(case.platform, name)
-    return given(need(size, f"platform.{name}"), name[0], f"{name} of the platform", f"platform.{name}")
+    return read(size, name[0], f"{name} of the platform", f"platform.{name}")
 
 
 def _base_loading(case: Case) -> Outcome:

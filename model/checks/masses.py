@@ -5,7 +5,7 @@ from __future__ import annotations
 from functools import cached_property
 
 from model.checks.missing import Missing, need, row
-from model.checks.term import LESS, SAME, Procedure, Term, combine, given, known, total
+from model.checks.term import LESS, SAME, Procedure, Term, combine, given, known, read, total
 from model.quantity import Quantity
 from model.rig.rig import Rig, along, plan_point
 
@@ -46,7 +46,7 @@ class Masses:
         if "platform" in self.left_out:
             return None
         platform = need(self.rig.platform, "platform")
-        return given(need(platform.mass, "platform.mass"), "m", "mass of the platform", "platform.mass")
+        return read(platform.mass, "m", "mass of the platform", "platform.mass")
 
     @cached_property
     def items(self) -> tuple[Term, ...]:
@@ -56,7 +56,7 @@ class Masses:
         found = []
         for i, item in enumerate(self.rig.item):
             field = row("item", i, item.name, "mass")
-            found.append(given(need(item.mass, field), f"m{i + 1}", f"mass of {item.name}", field))
+            found.append(read(item.mass, f"m{i + 1}", f"mass of {item.name}", field))
         return tuple(found)
 
     @cached_property
@@ -67,13 +67,15 @@ class Masses:
         found = []
         for i, one in enumerate(self.rig.canopy):
             field = row("canopy row", i, one.role, "mass")
-            each = given(need(one.mass, field), f"mc{i + 1}", f"mass of one canopy of row {i + 1}", field)
+            each = read(one.mass, f"mc{i + 1}", f"mass of one canopy of row {i + 1}", field)
             if one.count == 1:
                 found.append(each)
             else:
                 count = known(one.count, "N", "canopies of the row", "number", row("canopy row", i, one.role, "count"))
                 found.append(
-                    combine(SCALED, [each, count], f"mc{i + 1}", f"mass of the canopies of row {i + 1}", "mass", each.unit)
+                    combine(
+                        SCALED, [each, count], f"mc{i + 1}", f"mass of the canopies of row {i + 1}", "mass", each.unit
+                    )
                 )
         return tuple(found)
 
@@ -154,7 +156,7 @@ class Masses:
         return combine(CENTRE, [*masses, *more, *places, *further], name, "centre of gravity, canopies in", "length")
 
     def centre_above(self, axis: int, *, platform: bool) -> Term:
-        """One coordinate of the centre of gravity of what lies over a stack: the items, with or without the platform."""
+        """One coordinate of the centre of gravity of the items over a stack, with or without the platform."""
         if platform:
             return self.centre_without_canopies(axis)
         masses, places = self._places(axis, canopies=False)
@@ -168,9 +170,10 @@ class Masses:
         balanced = self.rig.platform.balanced_at if self.rig.platform else None
         if balanced is not None and axis < 2:
             masses, places = self._places(axis, canopies=True)
-            parts = total([*([self.platform] if self.platform else []), *self.items, *self.canopies], "Mp", "parts in place")
+            parts = total(
+                [*([self.platform] if self.platform else []), *self.items, *self.canopies], "Mp", "parts in place"
+            )
             terms = [parts, self.centre(axis), *masses, *places]
             return combine(CENTRE_WITHOUT, terms, name, "centre of gravity without canopies", "length")
         masses, places = self._places(axis, canopies=False)
         return combine(CENTRE, [*masses, *places], name, "centre of gravity without canopies", "length")
-

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING, Literal
 from model.checks.day import Day
 from model.checks.missing import CannotJudge, Missing, need
 from model.checks.rows import CanopyRow
-from model.checks.term import Procedure, Term, combine, derive, given, known, total
+from model.checks.term import Procedure, Term, combine, derive, given, known, read, total
 from model.physics import air, balance, drag
 from model.rig.rig import Rig
 
@@ -26,7 +26,9 @@ RULE_TEXT = {"time": "tau = t/tf, tf = L/V at line stretch", "distance": "tau = 
 class Motions:
     """The flights of one rig. Every property raises `Missing` where a field is absent."""
 
-    def __init__(self, rig: Rig, day: Day, falling: Callable[[], Term], rows: Callable[[], Sequence[CanopyRow]]) -> None:
+    def __init__(
+        self, rig: Rig, day: Day, falling: Callable[[], Term], rows: Callable[[], Sequence[CanopyRow]]
+    ) -> None:
         self.rig, self.day = rig, day
         self._falling, self._rows = falling, rows
         self._flown: dict[tuple[str, tuple[float, ...]], Motion] = {}
@@ -44,7 +46,7 @@ class Motions:
     @cached_property
     def indicated(self) -> Term:
         """Indicated airspeed at which the load leaves the aircraft."""
-        speed = given(need(self.rig.drop.airspeed, "drop.airspeed"), "Vi", "indicated airspeed", "drop.airspeed")
+        speed = read(self.rig.drop.airspeed, "Vi", "indicated airspeed", "drop.airspeed")
         leaving = self.rig.exit
         extraction = leaving.extraction if leaving and leaving.method == "extraction" else None
         if extraction is None:
@@ -68,14 +70,14 @@ class Motions:
         if leaving is not None and leaving.load_drag_area is not None:
             return given(leaving.load_drag_area, "CdA", "drag area of the load", "exit.load_drag_area")
         platform = need(self.rig.platform, "platform")
-        width = given(need(platform.width, "platform.width"), "b", "width", "platform.width")
+        width = read(platform.width, "b", "width", "platform.width")
         return derive(drag.front_face_drag_area, width, self.rigged_height)
 
     @cached_property
     def rigged_height(self) -> Term:
         """Rigged height over the platform's underside."""
         platform = need(self.rig.platform, "platform")
-        height = given(need(platform.height, "platform.height"), "h", "highest point over the deck", "platform.height")
+        height = read(platform.height, "h", "highest point over the deck", "platform.height")
         if platform.depth is None:
             depth = known(0.0, "d", "deck thickness", "length", "none given: 0", height.unit)
         else:
@@ -123,8 +125,13 @@ class Motions:
         height = given(chosen, "hs", f"set height of {one.name}", one.field("opens_at_set_height"))
         text = "h = hs x mean absolute temperature/standard mean, layer from the zone to the set height above it"
         true = self.day.aloft(
-            lambda day, set_to: day.true_height(set_to), text, height, "ho", f"true height at which {one.name} opens",
-            "length", height.unit,
+            lambda day, set_to: day.true_height(set_to),
+            text,
+            height,
+            "ho",
+            f"true height at which {one.name} opens",
+            "length",
+            height.unit,
         )
         return "opens_at_height", true
 

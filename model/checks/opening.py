@@ -6,7 +6,7 @@ from model.checks.case import Case
 from model.checks.missing import CannotJudge, need
 from model.checks.rows import CanopyRow
 from model.checks.step import Outcome, Step, own_limit
-from model.checks.term import Term, derive, given, known, least
+from model.checks.term import Term, derive, given, least, read, read_count
 from model.physics import strength
 from model.physics.formula import formula
 from model.physics.types import Real
@@ -42,7 +42,7 @@ def canopy_share(case: Case, one: CanopyRow) -> Term:
 def _canopy(case: Case) -> Outcome:
     factors = []
     for one in case.rows:
-        allowed = given(need(one.row.strength, one.field("strength")), "S", f"strength, {one.name}", one.field("strength"))
+        allowed = read(one.row.strength, "S", f"strength, {one.name}", one.field("strength"))
         factors.append(derive(strength.strength_ratio, allowed, canopy_share(case, one), of=one.name))
     return _outcome(case, least(factors, "k", "least strength/load over the rows"))
 
@@ -52,13 +52,15 @@ def speed_at_stretch(case: Case, one: CanopyRow) -> Term:
     forces, motions = case.forces, case.motions
     forces.must_open()
     unit = one.row.rated_speed.unit if one.row.rated_speed else case.motions.indicated.unit
-    rule = max(
-        motions.rules, key=lambda name: float(motions.motion(name).line_stretch_equivalent_speed[one.index, 0])
-    )
+    rule = max(motions.rules, key=lambda name: float(motions.motion(name).line_stretch_equivalent_speed[one.index, 0]))
     return motions.flown(
-        rule, lambda motion: motion.line_stretch_equivalent_speed[one.index, 0], "Ve",
-        f"equivalent airspeed at line stretch, {one.name}", "speed", unit,
-    )  # fmt: skip
+        rule,
+        lambda motion: motion.line_stretch_equivalent_speed[one.index, 0],
+        "Ve",
+        f"equivalent airspeed at line stretch, {one.name}",
+        "speed",
+        unit,
+    )
 
 
 def _speed(case: Case) -> Outcome:
@@ -79,11 +81,10 @@ def _speed(case: Case) -> Outcome:
 def snatch_of(case: Case, one: CanopyRow) -> Term:
     """Snatch force of one canopy of a row at line stretch."""
     lines = need(one.row.lines, one.field("lines"))
-    count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
-    each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
-    stretch = given(need(lines.stretch, one.field("lines.stretch")), "eps", "stretch at break", one.field("lines.stretch"))
+    count, each = _lines(one)
+    stretch = read(lines.stretch, "eps", "stretch at break", one.field("lines.stretch"))
     stiffness = derive(strength.stretch_stiffness, count, each, stretch, case.motions.line_length(one), of=one.name)
-    canopy_mass = given(need(one.row.mass, one.field("mass")), "mc", "mass of one canopy", one.field("mass"))
+    canopy_mass = read(one.row.mass, "mc", "mass of one canopy", one.field("mass"))
     load_mass = derive(balance_share, case.masses.suspended, one.count)
     reduced = derive(strength.reduced_mass, canopy_mass, load_mass)
     return derive(strength.snatch_force, snatch_speed(case, one), stiffness, reduced, of=one.name)
@@ -108,16 +109,23 @@ def snatch_speed(case: Case, one: CanopyRow) -> Term:
     if one.index > 0 or leaving.canopy_pulled_by != "static line" or leaving.method == "extraction":
         need(None, one.field("snatch_speed"))
     return case.motions.flown(
-        case.motions.rules[0], lambda motion: motion.line_stretch_relative_speed[one.index, 0], "dv",
-        "load against the aircraft at line stretch", "speed",
-    )  # fmt: skip
+        case.motions.rules[0],
+        lambda motion: motion.line_stretch_relative_speed[one.index, 0],
+        "dv",
+        "load against the aircraft at line stretch",
+        "speed",
+    )
 
 
 def _line_total(one: CanopyRow) -> Term:
+    return derive(strength.lines_strength, *_lines(one), of=one.name)
+
+
+def _lines(one: CanopyRow) -> tuple[Term, Term]:
+    """Lines of one canopy and the strength of each."""
     lines = need(one.row.lines, one.field("lines"))
-    count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
-    each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
-    return derive(strength.lines_strength, count, each, of=one.name)
+    count = read_count(lines.count, "Z", "lines of one canopy", one.field("lines.count"))
+    return count, read(lines.strength, "P", "strength of one line", one.field("lines.strength"))
 
 
 def _snatch(case: Case) -> Outcome:
@@ -134,8 +142,7 @@ def _snatch(case: Case) -> Outcome:
 
 def line_share(case: Case, one: CanopyRow) -> Term:
     """Load on one line of the worst canopy."""
-    lines = need(one.row.lines, one.field("lines"))
-    count = known(need(lines.count, one.field("lines.count")), "Z", "lines of one canopy", "number", one.field("lines.count"))
+    count, _ = _lines(one)
     angle = derive(strength.line_angle, one.diameter, case.motions.line_length(one), of=one.name)
     if angle.value != angle.value:
         raise CannotJudge(f"{one.name}: the lines are shorter than the mouth of the canopy is wide")
@@ -145,8 +152,7 @@ def line_share(case: Case, one: CanopyRow) -> Term:
 def _line(case: Case) -> Outcome:
     factors = []
     for one in case.rows:
-        lines = need(one.row.lines, one.field("lines"))
-        each = given(need(lines.strength, one.field("lines.strength")), "P", "strength of one line", one.field("lines.strength"))
+        _, each = _lines(one)
         factors.append(derive(strength.strength_ratio, each, line_share(case, one), of=f"one line, {one.name}"))
     return _outcome(case, least(factors, "k", "least line strength/share"))
 

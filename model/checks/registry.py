@@ -67,7 +67,7 @@ def unit_of(key: str) -> str | None:
     """The step unit that a limit key stands in; None for a key no computed step has."""
     for step in FIXED:
         if key in (step.key, step.limited_by):
-            return step.unit
+            return step.unit or "1"
     if key.startswith("tie.") and key.endswith((".holds", ".breaks")):
         return "N"
     return BY_ROW.get(key)

@@ -6,13 +6,15 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from model.checks.missing import Missing, need, row
-from model.checks.term import SAME, Procedure, Term, combine, derive, given, known
+from model.checks.term import SAME, Procedure, Term, combine, derive, given, known, read
 from model.physics import canopy, drag
 from model.quantity import Quantity
-from model.rig.canopy_table import CanopyType, Figure, lookup
 from model.rig.canopy import Canopy, Reefing
+from model.rig.canopy_table import CanopyType, Figure, lookup
 
-CLUSTER_OF_KNOWN = Procedure("CdS = N eta CdS1", lambda count, efficiency, area: count * efficiency * area, "definition")
+CLUSTER_OF_KNOWN = Procedure(
+    "CdS = N eta CdS1", lambda count, efficiency, area: count * efficiency * area, "definition"
+)
 NEAR = 0.10
 """A measured figure is used within this share of its mass and speed."""
 
@@ -53,8 +55,9 @@ class CanopyRow:
             return given(own, symbol, meaning, self.field(field))
         figure = need(table, f"{self.field(field)}: the canopy table has none for {self.row.type}")
         caution = f"table figure, from memory: {meaning} of {self.row.type}, row {self.index + 1}"
-        term = known(figure.middle, symbol, meaning, "number", f"canopy table, {self.row.type}: {figure.source}", None, caution)
-        return term
+        return known(
+            figure.middle, symbol, meaning, "number", f"canopy table, {self.row.type}: {figure.source}", None, caution
+        )
 
     @cached_property
     def drag_coefficient(self) -> Term:
@@ -91,7 +94,7 @@ class CanopyRow:
     def _shared(self, own: Quantity | None, symbol: str, meaning: str, field: str) -> Term:
         if self.row.count == 1:
             return known(1.0, symbol, meaning, "number", "one canopy")
-        return given(need(own, self.field(field)), symbol, meaning, self.field(field))
+        return read(own, symbol, meaning, self.field(field))
 
     @cached_property
     def measured_rate_used(self) -> bool:
@@ -109,8 +112,15 @@ class CanopyRow:
             source = f"measured: {measured.source}"
             return derive(
                 canopy.drag_area_from_rate,
-                given(measured.rate_mass, "m", "mass of the measured descent", f"{self.field('measured.rate_mass')}, {source}"),
-                given(measured.rate_density, "rho", "density of the measured descent", self.field("measured.rate_density")),
+                given(
+                    measured.rate_mass,
+                    "m",
+                    "mass of the measured descent",
+                    f"{self.field('measured.rate_mass')}, {source}",
+                ),
+                given(
+                    measured.rate_density, "rho", "density of the measured descent", self.field("measured.rate_density")
+                ),
                 given(measured.rate, "v", "measured rate of descent", f"{self.field('measured.rate')}, {source}"),
                 of=f"{self.name}, from the measured rate",
             )
@@ -119,7 +129,9 @@ class CanopyRow:
             inputs = [self.count, self.efficiency, one]
             return combine(CLUSTER_OF_KNOWN, inputs, "CdS", f"drag area, {self.name}", "area", one.unit)
         nominal = derive(drag.circle_area, self.diameter, of=f"one canopy of row {self.index + 1}")
-        return derive(canopy.cluster_drag_area, self.count, self.efficiency, self.drag_coefficient, nominal, of=self.name)
+        return derive(
+            canopy.cluster_drag_area, self.count, self.efficiency, self.drag_coefficient, nominal, of=self.name
+        )
 
     @cached_property
     def fillings(self) -> tuple[Filling, ...]:
@@ -131,7 +143,7 @@ class CanopyRow:
             found.append(self._filling(i, stage, before, cutter))
             before = found[-1].ratio
             name = f"reefing {i + 1} cutter"
-            cutter = given(need(stage.cutter, self.field(name)), f"tc{i + 1}", f"cutter of reefing stage {i + 1}", self.field(name))
+            cutter = read(stage.cutter, f"tc{i + 1}", f"cutter of reefing stage {i + 1}", self.field(name))
         found.append(self._filling(len(found), None, before, cutter))
         return tuple(found)
 
@@ -150,10 +162,7 @@ class CanopyRow:
             ratio = known(1.0, "eps", "drag ratio when full", "number", "definition")
             area = self.full_area
         else:
-            ratio = given(
-                need(stage.drag_ratio, self.field(f"{prefix}drag_ratio")), "eps", f"drag ratio of stage {i + 1}",
-                self.field(f"{prefix}drag_ratio"),
-            )
+            ratio = read(stage.drag_ratio, "eps", f"drag ratio of stage {i + 1}", self.field(f"{prefix}drag_ratio"))
             area = derive(canopy.reefed_drag_area, ratio, self.full_area, of=f"{self.name}, reefing stage {i + 1}")
         n = self._figure(own.fill_constant, table_n, "n", f"fill constant, {number}", f"{prefix}fill_constant")
         return Filling(
@@ -163,7 +172,10 @@ class CanopyRow:
             derive(canopy.fill_distance, n, self.diameter, ratio, before, of=f"{self.name}, {number}"),
             self._figure(own.growth_exponent, table_j, "j", f"growth exponent, {number}", f"{prefix}growth_exponent"),
             self._figure(
-                own.opening_coefficient, self.type.opening_coefficient, "Cx", f"opening coefficient, {number}",
+                own.opening_coefficient,
+                self.type.opening_coefficient,
+                "Cx",
+                f"opening coefficient, {number}",
                 f"{prefix}opening_coefficient",
             ),
             cutter,

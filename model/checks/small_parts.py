@@ -7,7 +7,7 @@ from datetime import date
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, Missing, need, row
 from model.checks.step import Outcome, Step, own_limit
-from model.checks.term import Procedure, Term, combine, derive, given, known
+from model.checks.term import Procedure, Term, combine, derive, known, read, read_count
 from model.physics import strength
 from model.rig.parts import Device, Tie
 from model.rig.rig import Rig
@@ -17,6 +17,7 @@ def tie_steps(rig: Rig) -> list[Step]:
     """Least it holds and most it may hold, for every tie."""
     found = []
     for i, tie in enumerate(rig.tie):
+
         def holds(case: Case, i: int = i, tie: Tie = tie) -> Outcome:
             return _holds(i, tie)
 
@@ -24,20 +25,22 @@ def tie_steps(rig: Rig) -> list[Step]:
             return _breaks(i, tie)
 
         found.append(Step(f"tie.{tie.name}.holds", f"{tie.name}: least it holds", "N", holds, tables=("tie",)))
-        found.append(Step(f"tie.{tie.name}.breaks", f"{tie.name}: most it holds before it breaks", "N", breaks, tables=("tie",)))
+        found.append(
+            Step(f"tie.{tie.name}.breaks", f"{tie.name}: most it holds before it breaks", "N", breaks, tables=("tie",))
+        )
     return found
 
 
 def _strands(i: int, tie: Tie) -> Term:
     field = row("tie", i, tie.name, "strands")
-    return known(need(tie.strands, field), "n", f"strands, {tie.name}", "number", field)
+    return read_count(tie.strands, "n", f"strands, {tie.name}", field)
 
 
 def _holds(i: int, tie: Tie) -> Outcome:
     field = row("tie", i, tie.name, "strand_strength")
-    each = given(need(tie.strand_strength, field), "S", f"least strength of a strand, {tie.name}", field)
+    each = read(tie.strand_strength, "S", f"least strength of a strand, {tie.name}", field)
     field = row("tie", i, tie.name, "knot_efficiency")
-    knot = given(need(tie.knot_efficiency, field), "eta", f"knot efficiency, {tie.name}", field)
+    knot = read(tie.knot_efficiency, "eta", f"knot efficiency, {tie.name}", field)
     result = derive(strength.tie_strength, _strands(i, tie), each, knot, of=tie.name)
     asked = tie.holds_at_least
     source = f"rig file, {row('tie', i, tie.name, 'holds_at_least')}"
@@ -46,7 +49,7 @@ def _holds(i: int, tie: Tie) -> Outcome:
 
 def _breaks(i: int, tie: Tie) -> Outcome:
     field = row("tie", i, tie.name, "strand_strength_most")
-    each = given(need(tie.strand_strength_most, field), "S", f"greatest strength of a strand, {tie.name}", field)
+    each = read(tie.strand_strength_most, "S", f"greatest strength of a strand, {tie.name}", field)
     result = derive(strength.tie_strength_most, _strands(i, tie), each, of=tie.name)
     asked = tie.breaks_by
     source = f"rig file, {row('tie', i, tie.name, 'breaks_by')}"
@@ -57,6 +60,7 @@ def device_steps(rig: Rig) -> list[Step]:
     """Arming of ground releases, expiry of every device."""
     found = []
     for i, device in enumerate(rig.device):
+
         def early(case: Case, i: int = i, device: Device = device) -> Outcome:
             return _early(case, i, device)
 
@@ -82,7 +86,7 @@ RATIO = Procedure("quotient of the lines above", lambda over, under: over / unde
 
 def _arms(i: int, device: Device) -> Term:
     field = row("device", i, device.name, "arms_after")
-    return given(need(device.arms_after, field), "ta", f"{device.name} arms after release", field)
+    return read(device.arms_after, "ta", f"{device.name} arms after release", field)
 
 
 def _times_measured(case: Case) -> bool:
@@ -92,7 +96,9 @@ def _times_measured(case: Case) -> bool:
 def _early(case: Case, i: int, device: Device) -> Outcome:
     case.forces.must_open()
     last = sum(len(one.fillings) for one in case.rows) - 1
-    full = case.motions.flown(case.heights.rule, lambda motion: motion.end_time[last, 0], "tf", "time of full opening", "time")
+    full = case.motions.flown(
+        case.heights.rule, lambda motion: motion.end_time[last, 0], "tf", "time of full opening", "time"
+    )
     result = combine(RATIO, [_arms(i, device), full], "k", "arming over full opening", "number")
     return Outcome(result, cautions=case.forces.cautions, measured=_times_measured(case))
 
@@ -101,7 +107,9 @@ def _late(case: Case, i: int, device: Device) -> Outcome:
     arms = _arms(i, device)
     if arms.value == 0:
         raise CannotJudge(f"{device.name} arms at release: there is no ratio")
-    lands = case.motions.flown(case.heights.rule, lambda motion: motion.touchdown_time[0], "t", "release to touchdown", "time")
+    lands = case.motions.flown(
+        case.heights.rule, lambda motion: motion.touchdown_time[0], "t", "release to touchdown", "time"
+    )
     result = combine(RATIO, [lands, arms], "k", "touchdown over arming", "number")
     return Outcome(result, cautions=case.forces.cautions, measured=_times_measured(case))
 
@@ -120,6 +128,7 @@ def service_steps(rig: Rig) -> list[Step]:
     """Packs against canopies; days since packing and age of every pack."""
     found = [Step("service.packs", "Packs for canopies", "1", _packs, tables=("pack",))]
     for i, pack in enumerate(rig.pack):
+
         def repack(case: Case, i: int = i) -> Outcome:
             return _since(case, i)
 
@@ -158,7 +167,9 @@ def _age(case: Case, i: int) -> Outcome:
     field = row("pack", i, pack.serial, "made")
     made = need(pack.made, field)
     on = case.rig.drop.date
-    return Outcome(known(age_in_years(made, on), "y", f"age of {pack.serial}", "yr", f"{field} and drop.date: {made} to {on}"))
+    return Outcome(
+        known(age_in_years(made, on), "y", f"age of {pack.serial}", "yr", f"{field} and drop.date: {made} to {on}")
+    )
 
 
 def _anniversary(made: date, year: int) -> date:

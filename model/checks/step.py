@@ -33,7 +33,7 @@ class Step:
 
     key: str
     title: str
-    unit: str
+    unit: str | None
     compute: Callable[[Case], Outcome] = field(repr=False)
     for_information: bool = False
     limit_key: str = ""
@@ -83,9 +83,7 @@ def tighter(limits: list[Limit]) -> Limit | None:
     high = min(highs, key=lambda limit: limit.maximum or 0.0, default=None)
     binding = [limit for limit in (low, high) if limit is not None]
     source = "; ".join(dict.fromkeys(limit.source for limit in binding))
-    return Limit(
-        low.minimum if low else None, high.maximum if high else None, source, binding[-1].shown_in
-    )
+    return Limit(low.minimum if low else None, high.maximum if high else None, source, binding[-1].shown_in)
 
 
 def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
@@ -98,7 +96,7 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
         return _without_value(step, ruling, Verdict.OPEN, str(cannot))
     except Failed as failed:
         return _without_value(step, ruling, Verdict.FAIL, str(failed))
-    value = in_step_unit(outcome.result, step.unit)
+    value = in_step_unit(outcome.result, step.unit or "1")
     limit = tighter([*outcome.own_limits, *([ruling.limit] if ruling.limit else [])])
     margin = limit.margin(value) if limit and isfinite(value) else None
     verdict, reason = _verdict(step, outcome, ruling, limit, value)
@@ -106,10 +104,21 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
     if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:
         said.insert(0, f"margin under {CLOSE:.0%}")
     return Finding(
-        key=step.key, title=step.title, kind=Kind.COMPUTED, group=step.group, verdict=verdict, reason=reason,
-        value=value if isfinite(value) else None, unit=step.unit, limit=limit, margin=margin, cautions=tuple(dict.fromkeys(said)), result=outcome.result,
-        shown_in=(limit.shown_in if limit else None) or outcome.result.unit, notes=outcome.notes,
-    )  # fmt: skip
+        key=step.key,
+        title=step.title,
+        kind=Kind.COMPUTED,
+        group=step.group,
+        verdict=verdict,
+        reason=reason,
+        value=value if isfinite(value) and step.unit else None,
+        unit=step.unit,
+        limit=limit,
+        margin=margin,
+        cautions=tuple(dict.fromkeys(said)),
+        result=outcome.result,
+        shown_in=(limit.shown_in if limit else None) or outcome.result.unit,
+        notes=outcome.notes,
+    )
 
 
 def _verdict(step: Step, outcome: Outcome, ruling: Ruling, limit: Limit | None, value: float) -> tuple[Verdict, str]:
@@ -142,6 +151,13 @@ def _without_value(step: Step, ruling: Ruling, verdict: Verdict, reason: str) ->
     if not ruling.judged:
         verdict, reason = Verdict.NOT_COUNTED, f"{_unjudged(ruling)} ({reason})"
     return Finding(
-        key=step.key, title=step.title, kind=Kind.COMPUTED, group=step.group, verdict=verdict, reason=reason,
-        unit=step.unit, limit=ruling.limit, shown_in=ruling.limit.shown_in if ruling.limit else None,
-    )  # fmt: skip
+        key=step.key,
+        title=step.title,
+        kind=Kind.COMPUTED,
+        group=step.group,
+        verdict=verdict,
+        reason=reason,
+        unit=step.unit,
+        limit=ruling.limit,
+        shown_in=ruling.limit.shown_in if ruling.limit else None,
+    )

@@ -7,7 +7,7 @@ from model.checks.hanging import CAUTIOUS
 from model.checks.missing import Missing, need, row
 from model.checks.opening import canopy_share, snatch_of
 from model.checks.step import Outcome, Step
-from model.checks.term import Term, derive, given, known, largest, least
+from model.checks.term import Term, derive, largest, least, read, read_count
 from model.physics import strength
 from model.rig.parts import Link
 
@@ -15,9 +15,11 @@ from model.rig.parts import Link
 def _outcome(case: Case, factors: list[Term], meaning: str) -> Outcome:
     forces = case.forces
     return Outcome(
-        least(factors, "k", meaning), cautions=forces.cautions, notes=(CAUTIOUS, *forces.notes()),
+        least(factors, "k", meaning),
+        cautions=forces.cautions,
+        notes=(CAUTIOUS, *forces.notes()),
         measured=forces.measured_all(),
-    )  # fmt: skip
+    )
 
 
 def leg_factors(case: Case) -> list[Term]:
@@ -35,8 +37,10 @@ def attachment_factors(case: Case) -> list[Term]:
     found = []
     for i, load in enumerate(hanging.loads):
         field = hanging.field(i, "attachment")
-        allowed = given(need(hanging.legs[i].attachment, field), "S", f"attachment of leg {i + 1}", field)
-        found.append(derive(strength.strength_ratio, allowed, load, of=f"attachment of leg {i + 1} ({hanging.legs[i].name})"))
+        allowed = read(hanging.legs[i].attachment, "S", f"attachment of leg {i + 1}", field)
+        found.append(
+            derive(strength.strength_ratio, allowed, load, of=f"attachment of leg {i + 1} ({hanging.legs[i].name})")
+        )
     return found
 
 
@@ -59,13 +63,21 @@ def link_factors(case: Case) -> list[Term]:
         raise Missing("link")
     found = []
     for i, link in enumerate(case.rig.link):
+
         def field(name: str, i: int = i, link: Link = link) -> str:
             return row("link", i, link.name, name)
 
-        each = given(need(link.strength, field("strength")), "S", f"strength of {link.name}", field("strength"))
-        abreast = known(need(link.abreast, field("abreast")), "n", f"{link.name}, side by side", "number", field("abreast"))
+        each = read(link.strength, "S", f"strength of {link.name}", field("strength"))
+        abreast = read_count(link.abreast, "n", f"{link.name}, side by side", field("abreast"))
         whole = derive(strength.link_strength, each, abreast, of=link.name)
-        found.append(derive(strength.strength_ratio, whole, link_load(case, link, field("carries")), of=f"link {i + 1} ({link.name})"))
+        found.append(
+            derive(
+                strength.strength_ratio,
+                whole,
+                link_load(case, link, field("carries")),
+                of=f"link {i + 1} ({link.name})",
+            )
+        )
     return found
 
 

@@ -11,8 +11,14 @@ from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from model.checks.missing import need
 from model.physics.formula import Formula
-from model.quantity import Quantity
+from model.quantity import Dimension, Quantity, UnitSystem, unit_for
+
+DIMENSIONS = frozenset(str(dimension) for dimension in Dimension)
+US_UNITS = frozenset(
+    {"lb", "oz", "ft", "in", "ft in", "yd", "ft2", "in2", "ft/s", "ft/min", "mph", "lbf", "psi", "psf", "slug/ft3"}
+)
 
 
 @dataclass(frozen=True)
@@ -71,6 +77,27 @@ def known(
     return Term(value, symbol, meaning, dimension, unit, origin, caution=caution)
 
 
+def read(quantity: Quantity | None, symbol: str, meaning: str, field: str) -> Term:
+    """A term from a field of the rig file, or `Missing` with the field's name."""
+    return given(need(quantity, field), symbol, meaning, field)
+
+
+def read_count(count: int | None, symbol: str, meaning: str, field: str) -> Term:
+    """A whole number from a field of the rig file, or `Missing` with the field's name."""
+    return known(float(need(count, field)), symbol, meaning, "number", field)
+
+
+def _like(inputs: Sequence[Term], dimension: str, value: float) -> str | None:
+    """The unit to show a derived term in: that of an input of its kind, else one of the system the inputs stand in."""
+    units = [(term.dimension, term.unit) for term in inputs if term.unit]
+    for kind, unit in units:
+        if kind == dimension:
+            return unit
+    if dimension in DIMENSIONS and any(unit in US_UNITS for _, unit in units):
+        return unit_for(Dimension(dimension), UnitSystem.US, None, value)
+    return None
+
+
 def derive(
     how: Formula[..., Any],
     *inputs: Term,
@@ -91,7 +118,9 @@ def derive(
     """
     value = float(how.function(*(term.value for term in inputs)))
     meaning = f"{how.result.meaning}, {of}" if of else how.result.meaning
-    return Term(value, symbol or how.result.text, meaning, how.result.dimension, unit, "", how, inputs, tuple(notes))
+    dimension = how.result.dimension
+    unit = unit or _like(inputs, dimension, value)
+    return Term(value, symbol or how.result.text, meaning, dimension, unit, "", how, inputs, tuple(notes))
 
 
 SAME = Procedure("the line above", lambda value: value, "definition")
@@ -109,6 +138,7 @@ def combine(
 ) -> Term:
     """Evaluate a procedure on terms."""
     value = float(how.function(*(term.value for term in inputs)))
+    unit = unit or _like(inputs, dimension, value)
     return Term(value, symbol, meaning, dimension, unit, "", how, tuple(inputs), tuple(notes))
 
 

@@ -10,4 +10,6 @@ def _density_altitude(case: Case) -> Outcome:
     return Outcome(case.day.density_altitude)
 
 
-STEPS = (Step("zone.density_altitude", "Density altitude of the drop zone", "m", _density_altitude, for_information=True),)
+STEPS = (
+    Step("zone.density_altitude", "Density altitude of the drop zone", "m", _density_altitude, for_information=True),
+)

@@ -17,7 +17,7 @@ def heading(checklist: Checklist) -> list[str]:
     """Which rig, which limits, what it comes to."""
     revision = f", revision {checklist.revision}" if checklist.revision is not None else ""
     name = f"{checklist.reference}{revision}: {checklist.name}" if checklist.reference else checklist.name + revision
-    lines = wrap(name, WIDTH) + [f"file: {checklist.file}"]
+    lines = [*wrap(name, WIDTH), f"file: {checklist.file}"]
     lines += wrap(f"limits: {checklist.limit_set or 'none'}", WIDTH)
     for note in checklist.notes:
         lines += wrap(f"note: {note}", WIDTH)
@@ -42,10 +42,8 @@ def step_lines(finding: Finding, system: UnitSystem) -> list[str]:
     details = []
     if finding.kind is Kind.COMPUTED:
         value = wording.value_text(finding, system)
-        limit = wording.bound_text(finding, system)
+        limit = wording.bound_text(finding, system) if finding.limit else ""
         margin = wording.margin_text(finding)
-        if finding.reason == limit:
-            limit = ""
         details.append("; ".join(part for part in (value, limit, margin) if part))
     details.append(wording.answer_text(finding))
     details.append(finding.reason if finding.reason not in ("", details[0]) else "")

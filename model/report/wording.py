@@ -6,8 +6,8 @@ from model.checks.finding import STEP_UNITS, Checklist, Finding, Kind, Verdict
 from model.quantity import Dimension, UnitSystem, show, show_apart, unit_for
 
 CAUTION = (
-    "A computed check is an estimate. Local rules, the technical manual and the judgement of licensed riggers go before "
-    "it; nothing here releases a load."
+    "A computed check is an estimate. Local rules, the technical manual and the judgement of licensed riggers go "
+    "before it; nothing here releases a load."
 )
 COUNTED = (Verdict.PASS, Verdict.FAIL, Verdict.OPEN, Verdict.NOT_COUNTED)
 OWN_UNITS = {"d": "d", "yr": "yr"}

@@ -7,13 +7,12 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 
 from model.checks.finding import Finding
-from model.checks.term import Procedure, Term, lines
+from model.checks.term import DIMENSIONS, Procedure, Term, lines
 from model.physics.formula import CONSTANTS, Formula
 from model.quantity import Dimension, UnitSystem, show, unit_for
 
 FUNCTIONS = ("sqrt", "exp", "ln", "sin", "cos", "tan", "asin", "acos", "atan", "hypot", "min", "max", "abs")
 TOKEN = re.compile(r"\s*([A-Za-z_][A-Za-z_0-9]*|\d+\.?\d*(?:e[+-]?\d+)?|[-+*/^(),=])")
-DIMENSIONS = {str(dimension) for dimension in Dimension}
 
 
 @dataclass(frozen=True, slots=True)
@@ -59,19 +58,32 @@ def _line(term: Term, system: UnitSystem) -> Line:
     )  # fmt: skip
 
 
+DIMENSIONED = re.compile(r"\d{4,}|\d+\.\d{2,}")
+"""A constant with a dimension of its own: such a formula holds in SI base units and shows its numbers in them."""
+BASE_UNITS = {
+    "mass": "kg", "length": "m", "area": "m2", "speed": "m/s", "force": "N", "pressure": "Pa", "temperature": "K",
+    "time": "s", "angle": "rad", "acceleration": "m/s2", "density": "kg/m3", "number": "",
+}  # fmt: skip
+
+
+def _in_base_units(term: Term, _: UnitSystem) -> str:
+    if term.dimension not in BASE_UNITS:
+        return term_value(term, UnitSystem.SI)
+    return show(term.value, Dimension(term.dimension), BASE_UNITS[term.dimension], digits=6)
+
+
 def with_numbers(how: Formula[..., object], term: Term, system: UnitSystem) -> str:
     """The right side of a formula with this rig's numbers and units in place of its symbols."""
-    values = {
-        symbol.text: term_value(one, system) for symbol, one in zip(how.symbols.values(), term.inputs, strict=True)
-    }
+    value = _in_base_units if DIMENSIONED.search(how.text) else term_value
+    values = {symbol.text: value(one, system) for symbol, one in zip(how.symbols.values(), term.inputs, strict=True)}
     written = "".join(_written(how.text.split("=", 1)[1], values))
     return written.replace("( ", "(").strip()
 
 
 def _written(text: str, values: dict[str, str]) -> Iterator[str]:
     factor_before = False
-    for match in TOKEN.finditer(text):
-        token = match.group(1)
+    tokens = [match.group(1) for match in TOKEN.finditer(text)]
+    for token, following in zip(tokens, [*tokens[1:], ""], strict=True):
         starts = token == "(" or token[0].isalnum()
         if starts and factor_before:
             yield " x "
@@ -80,7 +92,8 @@ def _written(text: str, values: dict[str, str]) -> Iterator[str]:
             factor_before = False
             continue
         if token[0].isalpha():
-            yield values.get(token, _constant(token))
+            number = values.get(token, _constant(token))
+            yield f"({number})" if (following == "^" and " " in number) or number.startswith("-") else number
         else:
             yield f" {token} " if token in "+-*=" else f"{token} " if token == "," else token
         factor_before = token == ")" or token[0].isalnum()
@@ -100,7 +113,7 @@ def working_text(finding: Finding, system: UnitSystem) -> list[str]:
     for line in working(finding, system):
         found.append(f"{line.symbol} = {line.value}   {line.meaning}")
         if line.origin:
-            found.append(f"    from {line.origin}")
+            found.append("    by definition" if line.origin == "definition" else f"    from {line.origin}")
         if line.formula:
             found.append(f"    {line.formula}")
         if line.numbers:

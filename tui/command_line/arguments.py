@@ -26,7 +26,9 @@ def _screen() -> argparse.ArgumentParser:
         allow_abbrev=False,
     )
     parser.add_argument("--version", action=_Version)
-    parser.add_argument("path", nargs="?", metavar="PATH", help="a rig file or a folder (default: rigs/ here, else this folder)")
+    parser.add_argument(
+        "path", nargs="?", metavar="PATH", help="a rig file or a folder (default: rigs/ here, else this folder)"
+    )
     parser.set_defaults(command="screen")
     return parser
 
