@@ -62,8 +62,13 @@ class Ruling:
 
 def in_step_unit(term: Term, unit: str) -> float:
     """A term's value in a step's unit; a plain number (a load factor, an age) stands in it already."""
+    return value_in_unit(term.value, term.dimension, unit)
+
+
+def value_in_unit(value: float, dimension: str, unit: str) -> float:
+    """A value of some dimension in a step's unit."""
     known = STEP_UNITS[unit]
-    return term.value / known.size if term.dimension == known.dimension else term.value
+    return value / known.size if dimension == known.dimension else value
 
 
 def own_limit(unit: str, source: str, least: Quantity | None = None, most: Quantity | None = None) -> Limit:

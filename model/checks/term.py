@@ -41,6 +41,7 @@ class Term:
 
     ``value`` is in SI. ``unit`` is the unit the user wrote, if any. A given term has an ``origin``; a derived one has
     ``how`` and its ``inputs``, in the order of the arguments. A ``caution`` goes with every step that uses the term.
+    ``from_file`` marks a quantity of the rig file, which may be moved.
     """
 
     value: float
@@ -54,6 +55,7 @@ class Term:
     notes: tuple[str, ...] = ()
     tolerance: float = 0.0
     caution: str = ""
+    from_file: bool = False
 
     def again(self) -> float:
         """The value worked out anew from the inputs' values; a given term returns its value."""
@@ -66,7 +68,14 @@ class Term:
 def given(quantity: Quantity, symbol: str, meaning: str, origin: str) -> Term:
     """A term read from a file."""
     return Term(
-        quantity.value, symbol, meaning, str(quantity.dimension), quantity.unit, origin, tolerance=quantity.tolerance
+        quantity.value,
+        symbol,
+        meaning,
+        str(quantity.dimension),
+        quantity.unit,
+        origin,
+        tolerance=quantity.tolerance,
+        from_file=True,
     )
 
 

@@ -1,7 +1,8 @@
 """A formula: one function together with its text, symbols, range and source, so that they cannot drift apart.
 
 The text is what a user reads, for example ``V = sqrt(2 m g0/(rho CdS))``. A blank between two symbols multiplies, ``^``
-raises to a power. Functions used in texts: sqrt, exp, ln, sin, cos, tan, asin, acos, atan, hypot, min, max, abs.
+raises to a power. Functions used in texts: sqrt, exp, ln, sin, cos, tan, asin, acos, atan, sinh, cosh,
+tanh, atanh, hypot, min, max, abs.
 A test parses every text with a computer-algebra library and compares it with the function at random inputs.
 """
 

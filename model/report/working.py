@@ -11,7 +11,25 @@ from model.checks.term import DIMENSIONS, Procedure, Term, lines
 from model.physics.formula import CONSTANTS, Formula
 from model.quantity import Dimension, UnitSystem, show, unit_for
 
-FUNCTIONS = ("sqrt", "exp", "ln", "sin", "cos", "tan", "asin", "acos", "atan", "hypot", "min", "max", "abs")
+FUNCTIONS = (
+    "sqrt",
+    "exp",
+    "ln",
+    "sin",
+    "cos",
+    "tan",
+    "asin",
+    "acos",
+    "atan",
+    "sinh",
+    "cosh",
+    "tanh",
+    "atanh",
+    "hypot",
+    "min",
+    "max",
+    "abs",
+)
 TOKEN = re.compile(r"\s*([A-Za-z_][A-Za-z_0-9]*|\d+\.?\d*(?:e[+-]?\d+)?|[-+*/^(),=])")
 
 
