@@ -130,7 +130,7 @@ def find_rigs(path: Path | str) -> Found:
     a problem. A file that cannot be parsed counts as a rig, so that reading it says what is wrong.
     """
     path = Path(path)
-    if not path.is_dir():
+    if not os.path.isdir(path):
         return Found((path,), ())
     rigs: list[Path] = []
     problems: list[InputProblem] = []

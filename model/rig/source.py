@@ -120,7 +120,7 @@ def read_bytes(path: Path) -> bytes:
         # Opening a pipe without O_NONBLOCK would wait for a writer for ever.
         handle = os.open(path, os.O_RDONLY | getattr(os, "O_NONBLOCK", 0) | getattr(os, "O_BINARY", 0))
     except OSError as error:
-        if path.is_dir():
+        if os.path.isdir(path):
             raise whole_file(file, _WHY_UNREADABLE[errno.EISDIR]) from None
         raise whole_file(file, _why(error)) from None
     except ValueError:
