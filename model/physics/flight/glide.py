@@ -1,7 +1,7 @@
 """Steady descent under a constant area, as a series in height.
 
-In steady descent w^2 = (g - d(w^2)/dh/2)/k, h the height fallen, by repeated substitution; what is left of the settling fades
-in closed form. It costs the same for ten metres and for ten kilometres.
+In steady descent w^2 = (g - d(w^2)/dh/2)/k, h the height fallen, by repeated substitution; what is left of the settling
+fades in closed form. It costs the same for ten metres and for ten kilometres.
 """
 
 from __future__ import annotations

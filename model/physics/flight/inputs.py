@@ -43,7 +43,7 @@ class Filling:
 
 @dataclass(frozen=True, eq=False)
 class Row:
-    """Canopies of one kind that open together. The first row has a line stretch or a static line, the others a trigger."""
+    """Canopies of one kind that open together: the first row with a line stretch or a static line, others with a trigger."""
 
     fillings: tuple[Filling, ...]
     line_stretch: Values | None = None
@@ -77,7 +77,8 @@ class Drop:
     ground_altitude: Values = 0.0
     """m, geometric, above mean sea level."""
     winds: tuple[tuple[Values, Values], ...] = ()
-    """(height above ground in m, wind along the track in m/s, tailwind positive), heights rising; linear between, nearest outside."""
+    """(height above ground in m, wind along the track in m/s, tailwind positive), heights rising; linear between, the
+    nearest outside."""
     density_factor: Values = 1.0
     gravity: float = STANDARD_GRAVITY
 

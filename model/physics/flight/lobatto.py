@@ -1,7 +1,7 @@
 """Polynomials through Lobatto nodes, for many cases at once.
 
-A history is an array of shape (nodes, cases); a column holds one case. Nodes lie on x = -1..1; the fraction of a piece is
-tau = ((x + 1)/2)^grade, so that a grade above 1 crowds the nodes at the start, where fractional powers are not smooth.
+A history is an array of shape (nodes, cases); a column holds one case. Nodes lie on x = -1..1; the fraction of a piece
+is tau = ((x + 1)/2)^grade: a grade above 1 crowds the nodes at the start, where fractional powers are not smooth.
 """
 
 from __future__ import annotations

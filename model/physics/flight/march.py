@@ -61,7 +61,9 @@ class Flyer:
     def __init__(self, load: Load, air: Air, wind: Wind, ground: Array, buffers: Buffers) -> None:
         self.load, self.air, self.wind, self.ground, self.buffers = load, air, wind, ground, buffers
 
-    def fly(self, state: State, course: Course, end: Array, begin: Array | None = None, watch: Watch | None = None) -> Stop:
+    def fly(
+        self, state: State, course: Course, end: Array, begin: Array | None = None, watch: Watch | None = None
+    ) -> Stop:
         """Fly from progress ``begin`` (None: 0) to ``end``, (cases,), or to the first stop."""
         progress = np.zeros_like(end) if begin is None else begin
         flying = (end > progress) & ~state.landed & (state.z > course.floor)

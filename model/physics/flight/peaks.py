@@ -47,7 +47,7 @@ def largest_speed(piece: Piece, flying: Mask) -> Array:
 
 
 def _largest(piece: Piece, weight: Array | None, flying: Mask) -> tuple[Array, Array, Array, Mask | None]:
-    """The largest weight (U^2 + P^2)/A^2: best node value and time, and where between nodes some cases (the mask) have more.
+    """The largest weight (U^2 + P^2)/A^2: best node value and time, and the x of cases (the mask) with more between nodes.
 
     Only the weight is differentiated as a polynomial: U^2 + P^2 and A grow by powers of ten within a piece, and the slope
     of such a polynomial is lost in rounding at its small end.
@@ -67,7 +67,9 @@ def _largest(piece: Piece, weight: Array | None, flying: Mask) -> tuple[Array, A
     if not inner.any():
         return at_node, time, at_node, None
     left = np.clip(best - (climbs < 0), 0, last - 1)
-    x = root_after(nodes, rising, left) if inner.all() else root_after(nodes, rising[:, inner], left[inner])
+    if not inner.all():
+        rising, A, left = rising[:, inner], A[:, inner], left[inner]
+    x = root_after(nodes, rising / A, left)
     return at_node, time, x, inner
 
 

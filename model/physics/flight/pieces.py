@@ -8,8 +8,8 @@ With the drag factor A(t) = exp(integral of k V dt), U = u A and P = w A the equ
 
     A' = k hypot(U, P)    P' = g A    U' = P dW/dz
 
-in which nothing decays and nothing is singular, so that polynomials through a few nodes hold whole phases. Both forms below
-are solved by Newton's method with the mean Jacobian of the batch: a small constant matrix per iteration.
+in which nothing decays and nothing is singular, so that polynomials through a few nodes hold whole phases. Both forms
+below are solved by Newton's method with the mean Jacobian of the batch: a small constant matrix per iteration.
 """
 
 from __future__ import annotations
@@ -112,7 +112,8 @@ class Piece:
 
 
 def by_time(
-    start: State, duration: Array, area_at: AreaAt, load: Load, air: Air, layer: Layer, nodes: Lobatto, buffers: Buffers
+    start: State, duration: Array, area_at: AreaAt, load: Load, air: Air, layer: Layer, nodes: Lobatto,
+    buffers: Buffers,
 ) -> Piece:
     """Solve a piece that lasts so many seconds, (cases,)."""
     count, cases = len(nodes.x), len(duration)
@@ -124,7 +125,7 @@ def by_time(
     U = start.u / fall                                  # now P' = A and A' = strength hypot(U, P)
     source[count], source[count + 1] = start.w / fall, 1
     np.add(source[count], nodes.tau, out=P)             # first guess: no drag
-    begin_and_tau = np.column_stack((np.ones(count), nodes.tau))
+    A[:] = 1
     per_density = (area_at(nodes.tau) + load.drag_area) * (depth / load.doubled_mass)
     density[:] = air(start.z)
     np.multiply(per_density, density, out=strength)
@@ -136,12 +137,8 @@ def by_time(
         if iteration < 2:
             each = P[:, few] / (np.sqrt(P[:, few] ** 2 + side[..., few]) + 1e-30) * strength[..., few]
             jacobian = _mean(each)
-            to_P = np.linalg.inv(np.eye(count) - nodes.twice * jacobian) @ np.column_stack((nodes.twice, begin_and_tau))
-            to_A = (nodes.integral * jacobian) @ to_P
-            to_A[:, :count] += nodes.integral
-            to_A[:, count + 1] += 1
-            to_PA = np.concatenate((to_P, to_A))
-        before = P[-1].copy(), density[-1].copy()
+            to_PA = _newton(nodes, jacobian)
+        before = _sample(PA, density)
         np.multiply(P, P, out=drive)
         drive += side
         np.sqrt(drive, out=drive)
@@ -158,20 +155,33 @@ def by_time(
             side = U * U
         air(z, density, scratch)
         np.multiply(per_density, density, out=strength)
-        change, previous = np.abs(P[-1] / before[0] - 1) + np.abs(density[-1] / before[1] - 1), change
-        left = change * np.fmin(change / previous, 1)   # the next change, judged from the last two
+        change, previous = np.abs(_sample(PA, density) / before - 1).sum(0), change
+        left = _left(change, previous)
         if iteration and np.fmax.reduce(left) < CONVERGED:
             break
     ripple = 0.02 * _ripple(nodes, drive, A[-1]) + 0.1 * _ripple(nodes, density, density[-1])
     u = U / A
     x = start.x + duration * (nodes.integral[-1] @ (u * fall + layer.at(z)))
     error = np.maximum(start.error, np.maximum(left, ripple))
-    end = State(start.t + duration, x, z[-1].copy(), u[-1] * fall, P[-1] / A[-1] * fall, error, start.landed, start.layer)
+    w = P[-1] / A[-1] * fall
+    end = State(start.t + duration, x, z[-1].copy(), u[-1] * fall, w, error, start.landed, start.layer)
     return Piece(nodes, start, end, area_at, layer, fall, A, U, P, drive, z, density, duration, 1.0)
 
 
+def _newton(nodes: Lobatto, jacobian: Array) -> Array:
+    """Matrix from what the mean Jacobian leaves of the drive, and P and A at the start, to P and A at all nodes."""
+    count = len(nodes.x)
+    source = np.column_stack((nodes.twice, np.ones(count), nodes.tau))
+    to_P = np.linalg.inv(np.eye(count) - nodes.twice * jacobian) @ source
+    to_A = (nodes.integral * jacobian) @ to_P
+    to_A[:, :count] += nodes.integral
+    to_A[:, count + 1] += 1
+    return np.concatenate((to_P, to_A))
+
+
 def by_distance(
-    start: State, length: Array, area_at: AreaAt, load: Load, air: Air, layer: Layer, nodes: Lobatto, buffers: Buffers
+    start: State, length: Array, area_at: AreaAt, load: Load, air: Air, layer: Layer, nodes: Lobatto,
+    buffers: Buffers,
 ) -> Piece:
     """Solve a piece that is so long through the air, m, (cases,).
 
@@ -195,7 +205,7 @@ def by_distance(
         np.exp(A, out=A)
         if iteration == 0:
             P[:] = _first_guess(start, U, pull * (nodes.integral @ (A * A)))
-        before = P[-1].copy(), density[-1].copy()
+        before = _sample(PA, density)
         np.hypot(P, U, out=H)
         np.maximum(H, SLOWEST, out=H)
         np.multiply(A, A, out=drive)
@@ -203,7 +213,7 @@ def by_distance(
         drive /= H
         if iteration < 3:
             jacobian = _mean(-drive[:, few] * P[:, few] / H[:, few] ** 2)
-            to_P = np.linalg.inv(np.eye(count) - nodes.integral * jacobian)
+            to_P = np.asarray(np.linalg.inv(np.eye(count) - nodes.integral * jacobian))
         P[:] = to_P @ (start.w + nodes.integral @ (drive - jacobian[:, None] * P))
         np.hypot(P, U, out=H)
         np.maximum(H, SLOWEST, out=H)
@@ -213,8 +223,8 @@ def by_distance(
         if layer.slope is not None:
             U = start.u + (layer.slope * length) * (nodes.integral @ (P * A / H))
         air(z, density, strength)
-        change, previous = np.abs(P[-1] - before[0]) / H[-1] + np.abs(density[-1] / before[1] - 1), change
-        left = change * np.fmin(change / previous, 1)
+        change, previous = np.abs(_sample(PA, density) / before - 1).sum(0), change
+        left = _left(change, previous)
         if iteration and np.fmax.reduce(left) < CONVERGED:
             break
     pace = A / H * length
@@ -244,6 +254,20 @@ def _mean(jacobian: Array) -> Array:
     return mean
 
 
+def _sample(PA: Array, density: Array) -> Array:
+    """Values that tell how far the iterations have come."""
+    count = len(density)
+    return np.concatenate((PA[[count // 2, count - 1, -1]], density[-1:]))
+
+
+def _left(change: Array, previous: Array) -> Array:
+    """What is left to change, judged from the last two changes."""
+    shrinks = np.fmin(change / previous, 0.9)
+    left: Array = change * shrinks / (1 - shrinks)
+    return left
+
+
 def _ripple(nodes: Lobatto, history: Array, scale: Array) -> Array:
     """The highest Legendre coefficients of a history against a scale."""
-    return np.abs(nodes.last @ history).sum(0) / scale
+    ripple: Array = np.abs(nodes.last @ history).sum(0) / scale
+    return ripple

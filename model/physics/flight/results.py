@@ -41,7 +41,7 @@ class Motion:
     """(rows, cases), N, largest dynamic pressure x area of that row alone, its opening coefficient while it fills."""
 
     started: Mask
-    """(fillings, cases); so all to `hold_force_time`. False: landed before, or the next row came before the cutter."""
+    """(fillings, cases); so all to `hold_force_time`. False: landed before, or the next row came before it."""
     start_time: Array
     start_speed: Array
     start_height: Array
@@ -69,7 +69,7 @@ class Motion:
     hold_force_time: Array
 
     slow_time: Array
-    """(cases,), s, first moment after the last filling at 1.05 x the local steady rate or less; nan if it lands before."""
+    """(cases,), s, first moment after the last filling at 1.05 x the local steady rate or less; nan: lands before."""
     slow_height: Array
     """m above the ground."""
     touchdown_time: Array
