@@ -7,7 +7,7 @@ from model.checks.missing import CannotJudge, need
 from model.checks.rows import CanopyRow
 from model.checks.step import Outcome, Step, own_limit
 from model.checks.term import Term, derive, given, least, read, read_count
-from model.physics import strength
+from model.physics import balance, strength
 from model.physics.formula import formula
 from model.physics.types import Real
 
@@ -85,20 +85,9 @@ def snatch_of(case: Case, one: CanopyRow) -> Term:
     stretch = read(lines.stretch, "eps", "stretch at break", one.field("lines.stretch"))
     stiffness = derive(strength.stretch_stiffness, count, each, stretch, case.motions.line_length(one), of=one.name)
     canopy_mass = read(one.row.mass, "mc", "mass of one canopy", one.field("mass"))
-    load_mass = derive(balance_share, case.masses.suspended, one.count)
+    load_mass = derive(balance.mass_per_canopy, case.masses.suspended, one.count)
     reduced = derive(strength.reduced_mass, canopy_mass, load_mass)
     return derive(strength.snatch_force, snatch_speed(case, one), stiffness, reduced, of=one.name)
-
-
-@formula(
-    "mL = ms/N",
-    result="mL | load on each canopy | mass",
-    symbols={"suspended": "ms | suspended mass | mass", "count": "N | canopies of the row | number"},
-    source="definition",
-)
-def balance_share(suspended: Real, count: Real) -> Real:
-    """Suspended mass for each canopy of a row, kg."""
-    return suspended / count
 
 
 def snatch_speed(case: Case, one: CanopyRow) -> Term:

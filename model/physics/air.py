@@ -117,8 +117,8 @@ def hydrostatic_pressure(zone_pressure: Real, zone_temperature: Real, temperatur
 
 
 @formula(
-    "p = 101325 max(0, (Q/101325)^0.1902632365 - 0.0065 H/288.15)^5.255876113",
-    result="p | pressure at the zone | pressure",
+    "pz = 101325 max(0, (Q/101325)^0.1902632365 - 0.0065 H/288.15)^5.255876113",
+    result="pz | pressure at the zone | pressure",
     symbols={
         "altimeter_setting": "Q | altimeter setting | pressure",
         "height": "H | geopotential height of the zone | length",

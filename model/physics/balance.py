@@ -131,16 +131,16 @@ def rigged_length(length: Real, front: Real, rear: Real) -> Real:
     result="s | slenderness | number",
     symbols={
         "height": "h | height of the centre of gravity over the underside | length",
-        "side": "b | smaller side of the base | length",
+        "base": "b | smaller side of the base | length",
     },
     source="definition",
 )
-def slenderness(height: Real, side: Real) -> Real:
+def slenderness(height: Real, base: Real) -> Real:
     """Give the height of the centre of gravity over the underside, m, by the smaller side of the base, m.
 
     Source: definition.
     """
-    return height / side
+    return height / base
 
 
 @formula(
@@ -158,15 +158,15 @@ def weighed_misfit(weighed: Real, parts: Real) -> Real:
 
 
 @formula(
-    "mc = ms/N",
-    result="mc | suspended mass for each canopy | mass",
-    symbols={"mass": "ms | suspended mass | mass", "count": "N | number of main canopies | number"},
+    "m_L = ms/N",
+    result="m_L | suspended mass for each canopy | mass",
+    symbols={"suspended": "ms | suspended mass | mass", "count": "N | number of main canopies | number"},
     source="definition",
     leaves_out="uneven sharing",
 )
-def mass_per_canopy(mass: Real, count: Real) -> Real:
+def mass_per_canopy(suspended: Real, count: Real) -> Real:
     """Give the suspended mass, kg, for each of a number of canopies.
 
     Source: definition.
     """
-    return mass / count
+    return suspended / count

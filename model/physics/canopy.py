@@ -21,7 +21,7 @@ _G0 = CONSTANTS["g0"]
     "CdS = N eta CD0 S0",
     result="CdS | drag area of the cluster | area",
     symbols={
-        "count": "N | number of canopies | number",
+        "count": "N | canopies of the row | number",
         "efficiency": "eta | cluster efficiency | number",
         "drag_coefficient": "CD0 | drag coefficient on the nominal area | number",
         "area": "S0 | nominal area of one canopy | area",
@@ -88,7 +88,7 @@ def drag_area_from_rate(mass: Real, density: Real, rate: Real) -> Real:
     result="CdS1 | drag area with one canopy out | area",
     symbols={
         "drag_area": "CdS | drag area of the row with all open | area",
-        "count": "N | number of canopies in the row | number",
+        "count": "N | canopies of the row | number",
     },
     source="derived: the others keep their efficiency",
     holds="at least two canopies",

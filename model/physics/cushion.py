@@ -96,12 +96,12 @@ def usable_stroke(layers: Real, thickness: Real, strain: Real) -> Real:
 @formula(
     "r = s_u/s",
     result="r | crush reserve | number",
-    symbols={"usable": "s_u | usable stroke of the thinnest row | length", "needed": "s | stroke needed | length"},
+    symbols={"usable": "s_u | usable stroke of the thinnest row | length", "stroke": "s | stroke needed | length"},
     source="definition",
 )
-def crush_reserve(usable: Real, needed: Real) -> Real:
+def crush_reserve(usable: Real, stroke: Real) -> Real:
     """Usable over needed stroke; below 1 the stack bottoms."""
-    return usable / needed
+    return usable / stroke
 
 
 @formula(

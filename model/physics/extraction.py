@@ -14,12 +14,12 @@ G0 = CONSTANTS["g0"]
 
 
 @formula(
-    "F = q CdS c",
+    "F = q CdS N",
     result="F | pull of the extraction parachutes | force",
     symbols={
         "pressure": "q | dynamic pressure | pressure",
         "drag_area": "CdS | drag area of one | area",
-        "count": "c | extraction parachutes | number",
+        "count": "N | extraction parachutes | number",
     },
     source="definition",
     leaves_out="the aircraft's wake, the parachute slowing as the load moves aft",
@@ -30,12 +30,12 @@ def extraction_force(pressure: Real, drag_area: Real, count: Real) -> Real:
 
 
 @formula(
-    "r = q CdS c/(M g0)",
+    "r = q CdS N/(M g0)",
     result="r | extraction ratio | number",
     symbols={
         "pressure": "q | dynamic pressure | pressure",
         "drag_area": "CdS | drag area of one | area",
-        "count": "c | extraction parachutes | number",
+        "count": "N | extraction parachutes | number",
         "mass": "M | rigged mass | mass",
     },
     source="definition",
@@ -47,12 +47,12 @@ def extraction_ratio(pressure: Real, drag_area: Real, count: Real, mass: Real) -
 
 
 @formula(
-    "P = q CdS c Cx",
+    "P = q CdS N Cx",
     result="P | load of the extraction line | force",
     symbols={
         "pressure": "q | dynamic pressure | pressure",
         "drag_area": "CdS | drag area of one | area",
-        "count": "c | extraction parachutes | number",
+        "count": "N | extraction parachutes | number",
         "opening_coefficient": "Cx | opening force over steady force | number",
     },
     source="infinite-mass opening: the aircraft does not slow",

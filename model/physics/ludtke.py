@@ -59,7 +59,7 @@ def ludtke_area_integral(fraction: Real, start: Real) -> Real:
 
 @formula(
     "Al = 1/(3 (1 - eta)) - ((1 - eta)^2/7 + eta (1 - eta)/2 + eta^2)",
-    result="Al | ballistic parameter from which the peak is at full opening | number",
+    result="Al | Ludtke's ballistic parameter from which the peak is at full opening | number",
     symbols={"start": _START},
     source="derived from " + _LUDTKE,
     holds="solid cloth, eta under 1",

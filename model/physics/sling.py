@@ -64,10 +64,10 @@ def axis_tilt(forward: Real, side: Real, rise: Real) -> Real:
 
 
 @formula(
-    "k = n S/L",
+    "k = n s/L",
     result="k | stiffness of the leg against the others | N/m",
     symbols={
-        "strength": "S | strength of one thickness of the web | force",
+        "strength": "s | strength of one thickness of the web | force",
         "plies": "n | thicknesses side by side | number",
         "length": "L | length of the leg | length",
     },
@@ -173,18 +173,18 @@ def corner_share(own_end: Real, other_end: Real, own_side: Real, other_side: Rea
 
 
 @formula(
-    "a = atan(e/h)",
+    "a = atan(e/z)",
     result="a | tilt of the hanging load | angle",
     symbols={
         "offset": "e | centre of gravity off the line under the apex | length",
-        "height": "h | apex above the centre of gravity | length",
+        "rise": "z | apex above the centre of gravity | length",
     },
     source="statics",
     holds="equal legs, the load free to swing in line",
 )
-def free_tilt(offset: Real, height: Real) -> Real:
+def free_tilt(offset: Real, rise: Real) -> Real:
     """Tilt in rad of a load that hangs freely with its centre of gravity off the middle."""
-    return np.arctan(offset / height)
+    return np.arctan(offset / rise)
 
 
 @dataclass(frozen=True, slots=True)

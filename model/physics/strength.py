@@ -53,11 +53,11 @@ def strength_ratio(strength: Real, load: Real) -> Real:
 
 
 @formula(
-    "P = F u/c",
+    "P = F u/N",
     result="P | load of the worst canopy | force",
     symbols={
         "force": "F | force of all canopies of the row | force",
-        "count": "c | canopies in the row | number",
+        "count": "N | canopies of the row | number",
         "uneven_share": "u | worst canopy's load over the even share | number",
     },
     source="definition",
@@ -68,11 +68,11 @@ def canopy_load(force: Real, count: Real, uneven_share: Real) -> Real:
 
 
 @formula(
-    "P = max(F u/c, F_s)",
+    "P = max(F u/N, F_s)",
     result="P | load of a part that carries one canopy | force",
     symbols={
         "force": "F | opening force of all canopies | force",
-        "count": "c | canopies | number",
+        "count": "N | canopies of the row | number",
         "uneven_share": "u | worst canopy's load over the even share | number",
         "snatch": "F_s | snatch force of one canopy | force",
     },
@@ -84,9 +84,9 @@ def one_canopy_load(force: Real, count: Real, uneven_share: Real, snatch: Real) 
 
 
 @formula(
-    "phi = asin(0.35 D0/L)",
+    "phi = asin(0.35 D0/l)",
     result="phi | half cone angle of the lines | angle",
-    symbols={"diameter": "D0 | nominal diameter | length", "line_length": "L | line length | length"},
+    symbols={"diameter": "D0 | nominal diameter | length", "line_length": "l | line length | length"},
     source="geometry, with an inflated radius of 0.35 D0 (from memory of Knacke, NWC TP 6575, ch. 5)",
     holds="lines longer than 0.35 D0",
     leaves_out="reefing, which keeps the mouth smaller; risers, which lengthen the cone",
@@ -98,11 +98,11 @@ def line_angle(diameter: Real, line_length: Real) -> Real:
 
 
 @formula(
-    "P = F u/(c Z cos(phi))",
+    "P = F u/(N Z cos(phi))",
     result="P | load of one line | force",
     symbols={
         "force": "F | force of all canopies of the row | force",
-        "count": "c | canopies in the row | number",
+        "count": "N | canopies of the row | number",
         "uneven_share": "u | worst canopy's load over the even share | number",
         "lines": "Z | lines of one canopy | number",
         "angle": "phi | half cone angle of the lines | angle",
@@ -146,7 +146,10 @@ def stretch_stiffness(members: Real, strength: Real, stretch: Real, length: Real
 @formula(
     "m_r = m_c m_L/(m_c + m_L)",
     result="m_r | reduced mass | mass",
-    symbols={"canopy_mass": "m_c | mass of one canopy | mass", "load_mass": "m_L | mass it pulls on | mass"},
+    symbols={
+        "canopy_mass": "m_c | mass of one canopy | mass",
+        "load_mass": "m_L | suspended mass for each canopy | mass",
+    },
     source="mechanics of two bodies",
 )
 def reduced_mass(canopy_mass: Real, load_mass: Real) -> Real:
