@@ -150,7 +150,7 @@ class _Stage:
         """The methods that leave gravity or the loss of speed out."""
         light = LIGHT if self.ballistic().value < inflation.INFINITE_MASS_LEAST else ""
         steep = self._steep()
-        forms = [
+        forms: list[tuple[str, Callable[[], Term], str, bool]] = [
             ("infinite mass", self.infinite_mass, light, not light),
             ("growth against time, no gravity", partial(self.peak, "time"), steep or self._slow(), not steep),
             ("growth against distance, no gravity", partial(self.peak, "distance"), steep, not steep),
