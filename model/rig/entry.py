@@ -87,7 +87,7 @@ class Entry(Strict):
         """Fields that do not go together: place, what was found, what is expected."""
         for key in _NEEDS[self.kind]:
             if not getattr(self, key):
-                yield (), f"no {key}", f"a {key} with kind {self.kind}"
+                yield (), f"no {key}", f"the {key} of kind {self.kind}"
         for key in _SOME:
             if getattr(self, key) and key not in _MAY[self.kind]:
                 yield (key,), f"{key} with kind {self.kind}", f"none of kind {self.kind}"

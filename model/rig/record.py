@@ -4,7 +4,9 @@ Each entry carries the digest of the one before it, so that a change inside show
 show that the last entries were cut off, or that the whole record was written anew.
 """
 
+import contextlib
 import os
+import sys
 import tempfile
 from collections.abc import Iterable, Iterator, Sequence
 from datetime import datetime
@@ -118,6 +120,11 @@ def append(path: Path | str, entry: Entry) -> Entry:
         InputError: the record is damaged, cannot be written, or was changed meanwhile; the file is as it was.
     """
     path = Path(os.path.realpath(path))
+    with _one_writer(path.parent):
+        return _append(path, entry)
+
+
+def _append(path: Path, entry: Entry) -> Entry:
     file = shown_path(path)
     before, data = _read(path)
     sealed = seal(entry, before)
@@ -133,6 +140,27 @@ def append(path: Path | str, entry: Entry) -> Entry:
     except OSError as error:
         raise whole_file(file, f"not written: {(error.strerror or 'unknown reason').lower()}") from None
     return sealed
+
+
+@contextlib.contextmanager
+def _one_writer(folder: Path) -> Iterator[None]:
+    """Let one program at a time append in a folder; the system gives the lock back when a program dies."""
+    if sys.platform == "win32":
+        yield
+        return
+    import fcntl
+
+    try:
+        handle = os.open(folder, os.O_RDONLY)
+    except OSError:  # whatever is wrong with the folder, writing says it better
+        yield
+        return
+    try:
+        with contextlib.suppress(OSError):  # some network folders know no locks; the bytes are compared all the same
+            fcntl.flock(handle, fcntl.LOCK_EX)
+        yield
+    finally:
+        os.close(handle)
 
 
 def _replace(path: Path, new: bytes, old: bytes | None) -> None:
