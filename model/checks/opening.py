@@ -39,11 +39,14 @@ def canopy_share(case: Case, one: CanopyRow) -> Term:
     return derive(strength.canopy_load, case.forces.of_row(one), one.count, one.uneven_share, of=one.name)
 
 
+def canopy_factor(case: Case, one: CanopyRow) -> Term:
+    """Strength of one canopy over the load of the row's worst."""
+    allowed = read(one.row.strength, "S", f"strength, {one.name}", one.field("strength"))
+    return derive(strength.strength_ratio, allowed, canopy_share(case, one), of=f"canopy of {one.name}")
+
+
 def _canopy(case: Case) -> Outcome:
-    factors = []
-    for one in case.rows:
-        allowed = read(one.row.strength, "S", f"strength, {one.name}", one.field("strength"))
-        factors.append(derive(strength.strength_ratio, allowed, canopy_share(case, one), of=one.name))
+    factors = [canopy_factor(case, one) for one in case.rows]
     return _outcome(case, least(factors, "k", "least strength/load over the rows"))
 
 
@@ -117,15 +120,19 @@ def _lines(one: CanopyRow) -> tuple[Term, Term]:
     return count, read(lines.strength, "P", "strength of one line", one.field("lines.strength"))
 
 
-def _snatch(case: Case) -> Outcome:
+def snatch_factor(case: Case, one: CanopyRow) -> Term:
+    """Strength of all lines of one canopy over its snatch force."""
     case.forces.must_open()
-    factors = []
-    for one in case.rows:
-        snatch = snatch_of(case, one)
-        if snatch.value > 0:
-            factors.append(derive(strength.strength_ratio, _line_total(one), snatch, of=f"{one.name}, snatch"))
+    snatch = snatch_of(case, one)
+    if snatch.value <= 0:
+        raise CannotJudge(f"{one.name}: no snatch, load and canopy move alike at line stretch")
+    return derive(strength.strength_ratio, _line_total(one), snatch, of=f"lines of {one.name}, snatch")
+
+
+def _snatch(case: Case) -> Outcome:
+    factors = [snatch_factor(case, one) for one in case.rows if snatch_of(case, one).value > 0]
     if not factors:
-        raise CannotJudge("no snatch: the load and the canopy move alike at line stretch")
+        raise CannotJudge("no snatch: load and canopies move alike at line stretch")
     return Outcome(least(factors, "k", "least line strength/snatch force"), measured=case.forces.measured_all())
 
 
@@ -138,12 +145,14 @@ def line_share(case: Case, one: CanopyRow) -> Term:
     return derive(strength.line_load, case.forces.of_row(one), one.count, one.uneven_share, count, angle, of=one.name)
 
 
+def line_factor(case: Case, one: CanopyRow) -> Term:
+    """Strength of one line over its share."""
+    _, each = _lines(one)
+    return derive(strength.strength_ratio, each, line_share(case, one), of=f"one line of {one.name}")
+
+
 def _line(case: Case) -> Outcome:
-    factors = []
-    for one in case.rows:
-        _, each = _lines(one)
-        factors.append(derive(strength.strength_ratio, each, line_share(case, one), of=f"one line, {one.name}"))
-    return _outcome(case, least(factors, "k", "least line strength/share"))
+    return _outcome(case, least([line_factor(case, one) for one in case.rows], "k", "least line strength/share"))
 
 
 STEPS = (

@@ -25,6 +25,7 @@ class Outcome:
     measured: bool = False
     opens: str = ""
     passes: str = ""
+    """Why it passes without a limit; such a step is all or nothing and has no margin."""
 
 
 @dataclass(frozen=True)
@@ -103,7 +104,8 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
         return _without_value(step, ruling, Verdict.FAIL, str(failed))
     value = in_step_unit(outcome.result, step.unit or "1")
     limit = tighter([*outcome.own_limits, *([ruling.limit] if ruling.limit else [])])
-    margin = limit.margin(value) if limit and isfinite(value) else None
+    judged = limit is not None and isfinite(value) and not outcome.passes
+    margin = limit.margin(value) if limit and judged else None
     verdict, reason = _verdict(step, outcome, ruling, limit, value)
     said = [*outcome.cautions, *cautions(outcome.result)]
     if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:

@@ -57,7 +57,7 @@ def _commands() -> argparse.ArgumentParser:
     _units(check)
     working = _command(commands, "working", "print the lines behind one step")
     working.add_argument("rig", metavar="RIG", help="a rig file")
-    working.add_argument("key", metavar="KEY", help="a step key, as 'rigslate check' prints it")
+    working.add_argument("key", metavar="KEY", help="a step key, as 'rigslate check' prints it, or load-path")
     _units(working)
     return parser
 

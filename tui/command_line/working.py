@@ -10,9 +10,11 @@ from model.checks.checklist import check
 from model.checks.finding import Finding
 from model.quantity import UnitSystem
 from model.report import wording
+from model.report.load_path import load_path_lines
 from model.report.working import working_text
 from model.rig.errors import InputError
 from model.rig.rule import nearest
+from model.study.load_path import KEY
 from tui.command_line import status
 
 
@@ -23,6 +25,9 @@ def run(options: argparse.Namespace) -> int:
     except InputError as error:
         status.complain(error.problems)
         return status.UNREADABLE
+    if options.key == KEY:
+        print("\n".join(load_path_lines(checklist.details, UnitSystem(options.units))))
+        return 0
     found = next((one for one in checklist.findings if one.key == options.key), None)
     if found is None:
         hint = nearest(options.key, [one.key for one in checklist.findings])
