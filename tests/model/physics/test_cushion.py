@@ -105,6 +105,10 @@ def test_advice_tells_the_ways_apart() -> None:
     assert cushion.advise(6e5, weight, speed, 0.05, 40.0).fit is CushionFit.TOO_HARD_AND_THIN
     assert cushion.advise(8e4, weight, speed, 0.05, 40.0).fit is CushionFit.TOO_SOFT_KEEP_AREA
     assert cushion.advise(3e5, weight, speed, 0.3).fit is CushionFit.FITS
+    # Both ends of the window fit: a stroke just used up, a deceleration at its limit.
+    assert soft.most_force is not None
+    for edge in (soft.least_force, soft.most_force):
+        assert cushion.advise(edge, weight, speed, 0.3, 40.0).fit is CushionFit.FITS
 
 
 @pytest.mark.parametrize(("thickness", "layers"), [(0.01, 1), (0.0762, 1), (0.0763, 2), (3 * 0.0762, 3), (0.3, 4)])
