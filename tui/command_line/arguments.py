@@ -53,6 +53,7 @@ def _commands() -> argparse.ArgumentParser:
     form = check.add_mutually_exclusive_group()
     form.add_argument("--json", action="store_true", help="print one JSON object")
     form.add_argument("--brief", action="store_true", help="print one line a rig")
+    form.add_argument("--ask", action="store_true", help="ask the open inspections of one RIG line by line")
     check.add_argument("--computed", action="store_true", help="leave the inspected steps out")
     _units(check)
     working = _command(commands, "working", "print the lines behind one step")

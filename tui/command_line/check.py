@@ -23,6 +23,8 @@ Result = tuple[Path, Checklist | tuple[InputProblem, ...]]
 
 def run(options: argparse.Namespace) -> int:
     """Check and print; returns the exit status."""
+    if options.ask:
+        return _ask(options)
     rigs, problems = _rigs(options.paths)
     status.complain(problems)
     results = list(_checked(rigs, computed_only=options.computed))
@@ -32,6 +34,15 @@ def run(options: argparse.Namespace) -> int:
     else:
         _print_text(results, options)
     return status.of([one.verdict for one in lists], unreadable=bool(problems) or len(lists) < len(results))
+
+
+def _ask(options: argparse.Namespace) -> int:
+    from tui.command_line.ask import run as ask
+
+    if len(options.paths) != 1 or Path(options.paths[0]).is_dir():
+        print("rigslate check --ask: expected one rig file", file=sys.stderr)
+        return status.UNREADABLE
+    return ask(options)
 
 
 def _rigs(paths: Sequence[str]) -> tuple[list[Path], list[InputProblem]]:
