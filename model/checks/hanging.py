@@ -24,7 +24,7 @@ BALANCE_TEXT = (
 BALANCE_SOURCE = "statics; elastic legs on a rigid body"
 CAUTIOUS = (
     "holds for a load hanging in line with the pull; at the first peak the canopies pull aft on a level load and the "
-    "aft legs carry most, so two legs is the cautious reading"
+    "forward legs carry most, so two legs is the cautious reading"
 )
 
 

@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 from model.physics import air, day_air
+from model.quantity import Dimension, show
 from model.rig.errors import InputError, InputProblem
 from model.rig.reading import RigFile
+from model.rig.rig import point
 
 
 def verify(rig_file: RigFile) -> None:
@@ -13,7 +15,7 @@ def verify(rig_file: RigFile) -> None:
     Raises:
         InputError: With every contradiction found.
     """
-    problems = [*_air(rig_file)]
+    problems = [*_air(rig_file), *_leg_lengths(rig_file)]
     if problems:
         raise InputError(problems)
 
@@ -35,3 +37,32 @@ def _air(rig_file: RigFile) -> list[InputProblem]:
             expected = "a dew point not over the temperature at the zone"
             problems.append(rig_file.problem(("drop", "dew_point"), f'"{drop.dew_point.text}"', expected))
     return problems
+
+
+def _leg_lengths(rig_file: RigFile) -> list[InputProblem]:
+    """Measured leg lengths that no confluence point fits within a hundredth."""
+    rig = rig_file.rig
+    given = rig.suspension is not None and rig.suspension.apex is not None
+    if given or len(rig.leg) < 3 or any(leg.length is None or leg.at is None for leg in rig.leg):
+        return []
+    from model.physics import sling
+
+    places = [point(rig, leg.at) for leg in rig.leg if leg.at is not None]
+    lengths = [leg.length for leg in rig.leg if leg.length is not None]
+    try:
+        apex = sling.apex_from_lengths(places, [length.value for length in lengths])
+    except ValueError as error:
+        return [
+            rig_file.problem(("leg", 0, "length"), f'"{lengths[0].text}"', f"lengths that meet in one point ({error})")
+        ]
+    if apex.worst <= sling.MISFIT_ALLOWED:
+        return []
+    found = []
+    for i, (length, misfit) in enumerate(zip(lengths, apex.misfits, strict=True)):
+        if abs(misfit) > sling.MISFIT_ALLOWED:
+            fits = show(length.value * (1 + float(misfit)), Dimension.LENGTH, length.unit)
+            expected = (
+                f"lengths that meet in one point within 1 %: {fits} would fit the other legs, {abs(misfit):.1%} off"
+            )
+            found.append(rig_file.problem(("leg", i, "length"), f'"{length.text}"', expected))
+    return found

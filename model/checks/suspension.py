@@ -23,19 +23,22 @@ def _outcome(case: Case, factors: list[Term], meaning: str) -> Outcome:
 
 
 def leg_factors(case: Case) -> list[Term]:
-    """Strength over load of every leg."""
+    """Strength over load of every leg that carries; a slack one has no factor."""
     hanging = case.hanging
     return [
         derive(strength.strength_ratio, hanging.strength(i), load, of=f"leg {i + 1} ({hanging.legs[i].name})")
         for i, load in enumerate(hanging.loads)
+        if load.value > 0
     ]
 
 
 def attachment_factors(case: Case) -> list[Term]:
-    """Strength over load of every lifting point."""
+    """Strength over load of every lifting point whose leg carries."""
     hanging = case.hanging
     found = []
     for i, load in enumerate(hanging.loads):
+        if load.value <= 0:
+            continue
         field = hanging.field(i, "attachment")
         allowed = read(hanging.legs[i].attachment, "S", f"attachment of leg {i + 1}", field)
         found.append(
