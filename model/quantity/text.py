@@ -88,8 +88,11 @@ def parse(text: str, dimension: Dimension) -> Quantity:
     """
     if len(text) > LONGEST_TEXT:
         raise QuantityError(quoted(text), expectation(dimension), f"over {LONGEST_TEXT} characters")
-    parts = _TOLERANCE.split(text.translate(_SPACES))
+    plain = text.translate(_SPACES)
+    parts = _TOLERANCE.split(plain)
     reader = _Reader(text, dimension)
+    if not plain.isprintable():
+        reader.fail("it holds a control character")
     if len(parts) > 2:
         reader.fail("more than one tolerance")
     value, unit = reader.value(parts[0], in_tolerance=False)

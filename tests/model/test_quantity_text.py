@@ -114,6 +114,8 @@ def test_text_becomes_si(text: str, dimension: Dimension, value: float, unit: st
         ("95 % ± 0.02", NUMBER, "plain numbers"),
         ("-300 °C", TEMPERATURE, "absolute zero"),
         ("1" * 300 + " ft", LENGTH, "characters"),
+        ("5\nft", LENGTH, "control character"),
+        ("5 ft\x1b[2J", LENGTH, "control character"),
         ("5 ft; rm", LENGTH, "no unit known here"),
     ],
 )
