@@ -14,6 +14,8 @@ _SNAP = 15
 _MOST_DIGITS = 60
 _PLAIN_FROM, _PLAIN_TO = -6, 15
 """Powers of ten between which a number is written without an exponent."""
+_MOST_FEET_INCHES = 10**12
+"""Feet from which the inches are left out."""
 
 
 class UnitSystem(StrEnum):
@@ -62,7 +64,7 @@ def _sized(dimension: Dimension, unit: str, size: float) -> str:
         return "kPa"
     if unit == "psf" and size >= from_unit(100.0, "psi", dimension):
         return "psi"
-    if unit == "ft" and size < from_unit(3.0, "ft", dimension):
+    if unit == "ft" and 0.0 < size < from_unit(3.0, "ft", dimension):
         return "in"
     if dimension is Dimension.TIME and size >= from_unit(2.0, "d", dimension):
         return "yr" if size >= from_unit(2.0, "yr", dimension) else "d"
@@ -147,7 +149,9 @@ def show_apart(value: float, bound: float, dimension: Dimension, unit: str, *, d
 
 def _show_exact(number: Fraction, unit: str, digits: int, sign: bool) -> str:
     if unit == FEET_INCHES:
-        return _feet_inches(number, digits, sign)
+        if abs(number) < _MOST_FEET_INCHES:
+            return _feet_inches(number, digits, sign)
+        unit = "ft"
     return _with_unit(_sign(number, sign, rounded := _round(abs(number), digits)) + _plain(rounded), unit)
 
 
@@ -163,9 +167,8 @@ def _sign(number: Fraction, plus: bool, rounded: Fraction) -> str:
 
 def _read(number: Fraction, unit: str, digits: int) -> Fraction:
     """The number that a reader of the shown text has before them."""
-    if unit == FEET_INCHES:
-        number = number * 12
-    size = _round(abs(number), digits)
+    inches = unit == FEET_INCHES and abs(number) < _MOST_FEET_INCHES
+    size = _round(abs(number) * 12, digits) / 12 if inches else _round(abs(number), digits)
     return -size if number < 0 else size
 
 

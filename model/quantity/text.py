@@ -239,7 +239,7 @@ class _Reader:
         self.fail(self._nearest_unit(unit))
 
     def _nearest_unit(self, unit: str) -> str:
-        from difflib import get_close_matches  # noqa: PLC0415 - only a mistake needs it
+        from difflib import get_close_matches  # only a mistake needs it
 
         names = unit_names(self.dimension)
         lowered = {name.lower(): name for name in names}

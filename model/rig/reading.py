@@ -12,7 +12,7 @@ from model.rig.errors import InputError, InputProblem, whole_file
 from model.rig.limits import LimitFile, LimitSet, limit_faults
 from model.rig.rig import Rig
 from model.rig.rules import rig_faults
-from model.rig.source import TomlFile, read_toml, shown_path
+from model.rig.source import TomlFile, read_toml, refuse_other_kinds, shown_path
 from model.rig.validate import validate
 
 RECORD_SUFFIX = ".record.toml"
@@ -78,6 +78,7 @@ def read_limits(path: Path | str) -> LimitFile:
         InputError: with every mistake of the file.
     """
     file = read_toml(Path(path))
+    refuse_other_kinds(file, "set")
     return LimitFile(file.path, file.text, file.raw, validate(file, LimitSet, limit_faults))
 
 
@@ -104,6 +105,7 @@ def load(path: Path | str, known_parts: KnownParts | None = None) -> Loaded:
 
 
 def _rig(file: TomlFile, known_parts: KnownParts | None) -> RigFile:
+    refuse_other_kinds(file, "rig")
     rig = validate(file, Rig, lambda rig, lost: rig_faults(rig, lost, known_parts))
     return RigFile(file.path, file.text, file.raw, rig, _limits_path(file))
 

@@ -73,6 +73,27 @@ class TomlFile:
         return tuple(sorted((self.problem(*fault) for fault in faults), key=lambda problem: problem.line or 0))
 
 
+_KINDS = {"rig": "a rig file", "set": "a limit set", "stick": "a stick file", "entry": "a record"}
+
+
+def refuse_other_kinds(file: TomlFile, table: str) -> None:
+    """Say in one message that a file of ours is of another kind than the one asked for.
+
+    Args:
+        file: the file.
+        table: the table that the kind asked for has: rig, set or stick.
+
+    Raises:
+        InputError: it has not that table but one of another kind.
+    """
+    if table in file.raw:
+        return
+    other = next((words for key, words in _KINDS.items() if key in file.raw), None)
+    if other is not None:
+        name = shown_path(file.path)
+        raise whole_file(name, f"{other}, where {_KINDS[table]} is expected", found=other, expected=_KINDS[table])
+
+
 def shown_path(path: Path | str) -> str:
     """A path as text that any terminal can print."""
     text = os.fspath(path).encode("utf-8", "backslashreplace").decode("utf-8")

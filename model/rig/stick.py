@@ -6,7 +6,7 @@ from pathlib import Path
 
 from model.rig.fields import Format, Length, Name, SpeedOrZero, TimeOrZero
 from model.rig.rule import Strict, optional, required, rows
-from model.rig.source import Fault, TomlFile, read_toml
+from model.rig.source import Fault, TomlFile, read_toml, refuse_other_kinds
 from model.rig.validate import validate
 
 
@@ -61,6 +61,7 @@ def read_stick(path: Path | str) -> StickFile:
         InputError: with every mistake of the file.
     """
     file = read_toml(Path(path))
+    refuse_other_kinds(file, "stick")
     stick = validate(file, Stick, _faults)
     rigs = tuple(file.path.parent / load.rig for load in stick.load)
     return StickFile(file.path, file.text, file.raw, stick, rigs)

@@ -81,6 +81,14 @@ def test_only_sizes_beyond_reason_get_an_exponent() -> None:
     assert parse(show(1.5e-9, NUMBER, ""), NUMBER).value == 1.5e-9
 
 
+@pytest.mark.parametrize("value", [5e-324, 1e-308, 1.7976931348623157e308])
+def test_the_ends_of_the_float_range_are_shown(value: float) -> None:
+    for dimension in Dimension:
+        for unit in (*unit_names(dimension), *(["ft in"] if dimension is LENGTH else [])):
+            assert 0 < len(show(value, dimension, unit)) < 40
+            assert to_unit(value, unit, dimension) >= 0.0 or dimension is Dimension.TEMPERATURE
+
+
 def test_what_is_not_finite_is_shown_and_does_not_raise() -> None:
     assert show(math.inf, LENGTH, "m") == "inf m"
     assert show_apart(math.nan, 1.0, LENGTH, "m") == ("nan m", "1 m")
@@ -118,7 +126,7 @@ def test_the_unit_follows_the_size() -> None:
     assert unit_for(FORCE, UnitSystem.SI, size=9_999.0) == "N"
     assert unit_for(FORCE, UnitSystem.SI, size=-10_000.0) == "kN"
     assert unit_for(LENGTH, UnitSystem.US, size=0.5) == "in"
-    assert unit_for(LENGTH, UnitSystem.US, size=1.0) == "ft"
+    assert unit_for(LENGTH, UnitSystem.US, size=1.0) == unit_for(LENGTH, UnitSystem.US, size=0.0) == "ft"
     assert unit_for(Dimension.TIME, UnitSystem.SI, size=60.0) == "s"
     assert unit_for(Dimension.TIME, UnitSystem.SI, size=86_400.0 * 33) == "d"
     assert unit_for(Dimension.TIME, UnitSystem.SI, size=86_400.0 * 4000) == "yr"

@@ -4,7 +4,7 @@ import os
 import subprocess
 import sys
 import tempfile
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from pathlib import Path
 
 import pytest
@@ -12,6 +12,7 @@ import pytest
 from model.rig.errors import InputError
 from model.rig.reading import find_rigs, load, read_limits, read_rig
 from model.rig.source import LARGEST_FILE
+from model.rig.stick import read_stick
 from tests.model.rig import samples
 
 
@@ -176,12 +177,25 @@ def test_a_limit_set_that_is_no_text_is_said_once(folder: Path) -> None:
     assert [problem.path for problem in caught.value.problems] == ["limits"]
 
 
-def test_a_rig_in_place_of_a_limit_set(folder: Path) -> None:
+@pytest.mark.parametrize(
+    ("read", "text", "words"),
+    [
+        (read_rig, samples.LIMITS, "a limit set, where a rig file is expected"),
+        (read_rig, samples.STICK, "a stick file, where a rig file is expected"),
+        (read_rig, "format = 1\n[[entry]]\n", "a record, where a rig file is expected"),
+        (load, samples.LIMITS, "a limit set, where a rig file is expected"),
+        (read_limits, samples.RIG, "a rig file, where a limit set is expected"),
+        (read_stick, samples.RIG, "a rig file, where a stick file is expected"),
+    ],
+)
+def test_a_file_of_another_kind_is_said_once(
+    tmp_path: Path, read: Callable[[Path], object], text: str, words: str
+) -> None:
+    path = tmp_path / "x.toml"
+    path.write_text(text, encoding="utf-8")
     with pytest.raises(InputError) as caught:
-        read_limits(folder / "pump.toml")
-    paths = [problem.path for problem in caught.value.problems]
-    assert "set" in paths
-    assert "rig" in paths
+        read(path)
+    assert str(caught.value) == f"{path}: {words}"
 
 
 def test_a_folder_gives_its_rigs_sorted_and_says_what_is_none(folder: Path) -> None:
