@@ -87,7 +87,6 @@ class ModelServices:
 
         from model.rig.entry import Entry
         from model.rig.errors import InputError
-        from model.rig.reading import load
         from model.rig.record import append, record_path
         from model.rig.standing import content_digest
 
@@ -99,8 +98,8 @@ class ModelServices:
             made_by = "unknown"
         kind: Literal["answer", "withdrawal"] = "withdrawal" if draft.choice == "withdrawal" else "answer"
         try:
-            loaded = load(rig)
-            limits = loaded.limits.raw if loaded.limits is not None else None
+            # The answer stands on what was shown, not on what the file may have become since.
+            shown, limits = checklist.content
             entry = Entry(
                 kind=kind,
                 key=draft.key,
@@ -112,7 +111,7 @@ class ModelServices:
                 when=when,
                 version=made_by,
                 covers=covers if kind == "answer" and covers else None,
-                on=content_digest(kind, draft.key, covers, loaded.rig.raw, limits),
+                on=content_digest(kind, draft.key, covers, shown, limits),
             )
             append(record_path(rig), entry)
         except InputError as error:

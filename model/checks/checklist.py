@@ -75,6 +75,7 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         stale=tuple(key for key, one in standings.answers.items() if one.stale),
         notes=_notes(limits.limits if limits else None),
         details=case,
+        content=(rig_file.raw, limits_raw),
     )
 
 

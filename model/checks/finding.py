@@ -85,7 +85,7 @@ class Limit:
         if high is not None:
             gaps.append((high - value, abs(high)))
         if low is not None and high is not None and low * high <= 0:
-            half = (high - low) / 2
+            half = abs(high - low) / 2
             gaps = [(gap, half) for gap, _ in gaps]
         if not gaps or any(size == 0 for _, size in gaps):
             return None
@@ -165,7 +165,10 @@ class Signature:
 
 @dataclass(frozen=True, slots=True)
 class Checklist:
-    """All findings of one rig, in the order they are stepped through."""
+    """All findings of one rig, in the order they are stepped through.
+
+    ``details`` is the case behind them, ``content`` the raw values of rig file and limit set they were made from.
+    """
 
     file: str
     name: str
@@ -178,6 +181,7 @@ class Checklist:
     stale: tuple[str, ...] = ()
     notes: tuple[str, ...] = ()
     details: Any = None
+    content: Any = None
 
     @property
     def verdict(self) -> Verdict:
