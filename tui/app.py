@@ -114,11 +114,15 @@ class RigslateApp(App[int], inherit_bindings=False):
         self.register_theme(_LIGHT)
         self.theme = _DARK.name
         self.set_keymap({name: ",".join(keys) for name, keys in self.keys.own.items()})
+        if self._greeting:
+            self.front.say(self._greeting)
+        # The model's imports would hold up the first painting, so they wait for it.
+        self.call_after_refresh(self._begin)
+
+    def _begin(self) -> None:
         self._tasks.find(self._only or self.root)
         if self._watch is not None:
             self.set_interval(self._watch, self._look_at_files)
-        if self._greeting:
-            self.front.say(self._greeting)
 
     @property
     def front(self) -> BaseScreen:

@@ -2,10 +2,15 @@
 
 from __future__ import annotations
 
+import asyncio
 from collections.abc import Callable
+from contextlib import suppress
 from dataclasses import dataclass, field, replace
 from datetime import UTC, datetime
 from pathlib import Path
+
+from textual import events
+from textual.message_pump import MessagePump
 
 from model.checks.finding import (
     Answer,
@@ -181,6 +186,67 @@ def app(path: Path, model: FakeServices, *, ascii_only: bool = False, colour: bo
         path, model, ascii_only=ascii_only, colour=colour, keys=keys, greeting=greeting, watch=watch,
         moment=lambda _: float(next(ticks)),
     )  # fmt: skip
+
+
+_CHARACTERS = {"space": " ", "question_mark": "?", "full_stop": ".", "minus": "-"}
+
+
+async def press(running: RigslateApp, *keys: str) -> None:
+    """Press keys, each once the one before has done its work; much quicker than waiting for an idle processor."""
+    for key in keys:
+        event = events.Key(key, key if len(key) == 1 else _CHARACTERS.get(key))
+        event.set_sender(running)
+        running._driver.send_message(event)  # type: ignore[union-attr]
+        for _ in range(3):
+            await _handled(running)
+            await _handled(running.screen)
+            if running.focused is not None:
+                await _handled(running.focused)
+
+
+async def _handled(pump: MessagePump) -> None:
+    """Wait until a message pump has worked off what it has."""
+    done = asyncio.Event()
+    pump.call_later(done.set)
+    with suppress(TimeoutError):
+        await asyncio.wait_for(done.wait(), 5)
+
+
+async def settled(running: RigslateApp) -> str:
+    """The screen once all workers are done and everything is drawn."""
+    before = ""
+    for _ in range(400):
+        await running.workers.wait_for_complete()
+        await _handled(running)
+        await _handled(running.screen)
+        begun = running.shelf.entries or running.folder_problems
+        busy = running.book.left or any(worker.is_running for worker in running.workers)
+        if begun and not busy and not running.front.about_to_draw:
+            shown = text(running)
+            if shown == before:
+                break
+            before = shown
+        await asyncio.sleep(0.02)
+    return text(running)
+
+
+async def after(running: RigslateApp, *keys: str) -> str:
+    """The screen after some keys."""
+    for key in keys:
+        await press(running, key)
+        if key == "enter":
+            await running.workers.wait_for_complete()
+            await _handled(running)
+            await _handled(running.screen)
+    return await settled(running)
+
+
+async def back_to_first(running: RigslateApp) -> None:
+    """Leave all screens but the first, with the first rig marked."""
+    while len(running.screen_stack) > 1:
+        running.pop_screen()
+        await _handled(running)
+    await press(running, "1", "home")
 
 
 def lines(running: RigslateApp) -> list[str]:

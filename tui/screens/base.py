@@ -113,6 +113,11 @@ class BaseScreen(Screen[None], inherit_bindings=False):
         page.show(rows, chars=self.chars, look=self.slate.look, more=more, keep=keep)
         return page
 
+    @property
+    def about_to_draw(self) -> bool:
+        """Whether a drawing is on its way."""
+        return self._drawing
+
     def draw_soon(self) -> None:
         """Draw within a moment; several requests make one drawing."""
         if not self._drawing:
@@ -189,13 +194,13 @@ class BaseScreen(Screen[None], inherit_bindings=False):
 
     def action_help(self) -> None:
         """Show the keys."""
-        from tui.screens.help import HelpScreen  # noqa: PLC0415  (loaded when first asked for)
+        from tui.screens.help import HelpScreen
 
         self.slate.push_screen(HelpScreen(self.KIND))
 
     def action_palette(self) -> None:
         """Show the commands of this screen."""
-        from tui.screens.palette import PaletteScreen  # noqa: PLC0415  (loaded when first asked for)
+        from tui.screens.palette import PaletteScreen
 
         self.slate.push_screen(PaletteScreen(self))
 

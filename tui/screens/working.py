@@ -68,7 +68,7 @@ class WorkingScreen(TextScreen):
 
     def text_rows(self, cells: int) -> Rows:
         """The lines."""
-        from tui.views.step import working_rows  # noqa: PLC0415  (needs the model's numbers)
+        from tui.views.step import working_rows
 
         if not self._lines:
             return [row(Span(self._note, "note"))]

@@ -113,7 +113,8 @@ def detail(entry: Entry | None, *, under_way: bool, cells: int, chars: Charset) 
     if entry.problems or summary is None:
         return rows
     counts = "   ".join(f"{count} {word.lower()}" for word, count in summary.counts)
-    rows.append(row(f"{summary.verdict}   {counts}"))
+    sign, tone = MARKS[summary.verdict]
+    rows.append(row(Span(f"{summary.verdict} {sign}", tone), f"   {counts}"))
     if summary.worst is not None:
         _, title, margin = summary.worst
         rows.append(row(*_clipped(f"least margin {margin_share(margin)}: ", chars.clean(title), cells, chars)))
