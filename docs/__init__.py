@@ -1,0 +1,1 @@
+"""Documentation, and the scripts that write its generated parts."""
