@@ -27,8 +27,7 @@ def smaller_side(case: Case) -> Term:
 
 def _slenderness(case: Case) -> Outcome:
     centre = case.masses.centre(2)
-    depth = case.motions.rigged_height.inputs[1]
-    over = total([centre, depth], "h", "centre of gravity over the platform's underside")
+    over = total([centre, case.motions.depth], "h", "centre of gravity over the platform's underside")
     return Outcome(derive(balance.slenderness, over, smaller_side(case)))
 
 

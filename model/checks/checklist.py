@@ -49,8 +49,15 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         InputError: For what only physics or the limit set can tell to be wrong.
     """
     rig_file, limits = loaded.rig, loaded.limits
-    rulings = _rulings(loaded)
-    verify(rig_file)
+    problems: list[InputProblem] = []
+    rulings: Mapping[str, Ruling] = {}
+    try:
+        rulings = _rulings(loaded)
+    except InputError as error:
+        problems += error.problems
+    problems += verify(rig_file)
+    if problems:
+        raise InputError(problems)
     case = Case(rig_file.rig, limits.limits if limits else None)
     limits_raw = limits.raw if limits else None
     standings = standing(entries, rig_file.raw, limits_raw)
@@ -61,6 +68,7 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
     _known_parts(loaded, findings)
     tables = {step.key: step.tables for step in steps}
     findings = [_left_out(finding, case, tables.get(finding.key, ())) for finding in _ordered(findings)]
+    settled = [*standings.answers.items(), *standings.deviations.items()]
     deviations = {key: one.entry.remark for key, one in standings.deviations.items()}
     findings = [replace(one, deviation=deviations.get(one.key)) for one in findings]
     return Checklist(
@@ -72,7 +80,7 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         findings=tuple(findings),
         digests=(digest.rigging_digest(rig_file.raw, limits_raw), digest.full_digest(rig_file.raw, limits_raw)),
         signatures=tuple(Signature(one.entry.who, one.entry.when, one.stale) for one in standings.signatures),
-        stale=tuple(key for key, one in standings.answers.items() if one.stale),
+        stale=tuple(dict.fromkeys(key for key, one in settled if one.stale)),
         notes=_notes(limits.limits if limits else None),
         details=case,
         content=(rig_file.raw, limits_raw),

@@ -17,7 +17,8 @@ def rate_is_measured(case: Case) -> bool:
     return all(one.measured_rate_used for one in case.open_at_end)
 
 
-def _measured_cautions(rows: Sequence[CanopyRow]) -> tuple[str, ...]:
+def measured_cautions(rows: Sequence[CanopyRow]) -> tuple[str, ...]:
+    """Cautions for measured rates that stand but are not used."""
     return tuple(
         f"{one.name}: measured rate not used, its mass is more than 10 % from this one's"
         for one in rows
@@ -37,7 +38,7 @@ def rate(case: Case) -> Term:
 
 
 def _rate(case: Case) -> Outcome:
-    return Outcome(rate(case), measured=rate_is_measured(case), cautions=_measured_cautions(case.open_at_end))
+    return Outcome(rate(case), measured=rate_is_measured(case), cautions=measured_cautions(case.open_at_end))
 
 
 def several_mains(rig_counts: Sequence[int]) -> bool:
@@ -47,7 +48,7 @@ def several_mains(rig_counts: Sequence[int]) -> bool:
 
 def _rate_one_out(case: Case) -> Outcome:
     rows = case.open_at_end
-    worst = max(rows, key=lambda one: one.row.count if one.row.role == "main" else 0)
+    worst = max(rows, key=lambda one: one.full_area.value if one.row.role == "main" else 0.0)
     if worst.row.count == 1:
         rest = [one for one in rows if one is not worst]
         areas = [one.full_area for one in rest]
@@ -58,7 +59,7 @@ def _rate_one_out(case: Case) -> Outcome:
         areas = [missing if one is worst else one.full_area for one in rows]
     area = areas[0] if len(areas) == 1 else total(areas, "CdS", "drag area with one canopy out")
     result = derive(drag.terminal_speed, case.masses.falling, case.day.density, area, of="one canopy out")
-    return Outcome(result, measured=rate_is_measured(case), cautions=_measured_cautions(rows))
+    return Outcome(result, measured=rate_is_measured(case), cautions=measured_cautions(rows))
 
 
 def _from_motion(case: Case, attribute: str, symbol: str, meaning: str, dimension: str) -> Term:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from functools import cached_property
 
 from model.checks.masses import Masses
-from model.checks.missing import Failed
+from model.checks.missing import CannotJudge, Failed, Missing
 from model.checks.motion import Motions
 from model.checks.rows import NEAR, CanopyRow
 from model.checks.term import Term, given, largest
@@ -29,6 +29,16 @@ class Forces:
         """Raise `Failed` where the load lands before its last filling ends."""
         if self.motions.landed_early():
             raise Failed(LANDS_FIRST)
+
+    def for_geometry(self) -> tuple[str, bool]:
+        """For a step that needs no force: why it fails all the same, and whether forces rest on measured figures.
+
+        Where the motion cannot be flown such a step stands on its own.
+        """
+        try:
+            return (LANDS_FIRST if self.motions.landed_early() else ""), self.measured_all()
+        except (Missing, CannotJudge):
+            return "", False
 
     def measured(self, one: CanopyRow) -> Term | None:
         """The measured opening force of a row where it stands and is near this mass and speed."""
@@ -110,8 +120,7 @@ class Forces:
 
     def measured_all(self) -> bool:
         """Whether forces rest on measured figures: a force for every row, or a time for every filling."""
-        rows = self.motions.rows
-        return all(self.measured(one) is not None for one in rows) or all(one.every_time_measured for one in rows)
+        return all(one.every_time_measured or self.measured(one) is not None for one in self.motions.rows)
 
     @cached_property
     def ratios(self) -> tuple[tuple[str, float, float], ...]:
@@ -131,7 +140,7 @@ class Forces:
     def cautions(self) -> tuple[str, ...]:
         """What must be said beside every number that rests on a filling estimate."""
         found = [f"{OUTSIDE} ({name})" for name, path, speed in self.ratios if path < RATIO_PATH or speed > RATIO_SPEED]
-        motion = self.motions.motion("time")
+        motions = [self.motions.motion(rule) for rule in self.motions.rules]
         number = 0
         for one in self.motions.rows:
             if not one.every_time_measured and self.measured(one) is None and not self._in_class(one):
@@ -140,11 +149,13 @@ class Forces:
                     "0.5 to 2 lb/ft2, not made to open fast): real forces may be over twice the estimate"
                 )
             for filling in one.fillings:
-                if bool(motion.started[number, 0]) and not bool(motion.full[number, 0]):
-                    share = float(motion.reached[number, 0])
-                    found.append(f"{one.name}: filling {filling.number + 1} is cut short at {share:.0%} of its area")
-                elif not bool(motion.started[number, 0]) and not bool(motion.landed_early[0]):
-                    found.append(f"{one.name}: filling {filling.number + 1} never starts, the next row opens first")
+                name = f"{one.name}: filling {filling.number + 1}"
+                cut = [m for m in motions if bool(m.started[number, 0]) and not bool(m.full[number, 0])]
+                if cut:
+                    share = min(float(m.reached[number, 0]) for m in cut)
+                    found.append(f"{name} is cut short at {share:.0%} of its area")
+                if any(not bool(m.started[number, 0]) and not bool(m.landed_early[0]) for m in motions):
+                    found.append(f"{name} never starts, the next row opens first")
                 number += 1
         return (*found, *self.unused())
 

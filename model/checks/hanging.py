@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from functools import cached_property, lru_cache
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
-from model.checks.term import Procedure, Term, combine, derive, given, known, read, read_count
+from model.checks.term import LESS, Procedure, Term, combine, derive, given, known, read, read_count
 from model.physics import hanging, sling, strength
 from model.physics.hanging import Hang, Outcome
 from model.rig.parts import Leg
@@ -96,23 +97,27 @@ class Hanging:
 
         return coordinate(0), coordinate(1), coordinate(2)
 
+    def place(self, i: int) -> list[Term]:
+        """Where a leg is attached, in deck coordinates."""
+        leg = self.legs[i]
+        reading = need(leg.at, self.field(i, "at"))
+        place = point(self.case.rig, reading)
+        return [
+            known(
+                place[k],
+                f"{axis}{i + 1}",
+                f"{axis} of leg {i + 1} ({leg.name})",
+                "length",
+                self.field(i, "at"),
+                reading[k].unit,
+            )
+            for k, axis in enumerate("xyz")
+        ]
+
     def _inputs(self, force: Term) -> list[Term]:
-        inputs = []
-        rig = self.case.rig
+        inputs: list[Term] = []
         for i, leg in enumerate(self.legs):
-            reading = need(leg.at, self.field(i, "at"))
-            place = point(rig, reading)
-            inputs += [
-                known(
-                    place[k],
-                    f"{axis}{i + 1}",
-                    f"{axis} of leg {i + 1} ({leg.name})",
-                    "length",
-                    self.field(i, "at"),
-                    reading[k].unit,
-                )
-                for k, axis in enumerate("xyz")
-            ]
+            inputs += self.place(i)
             inputs.append(read(leg.strength, "S", f"strength of one ply, leg {i + 1}", self.field(i, "strength")))
             inputs.append(self.plies(i))
         inputs += self.apex
@@ -179,29 +184,28 @@ class Hanging:
         joint = read(leg.joint_efficiency, "eta", f"joint efficiency, leg {i + 1}", self.field(i, "joint_efficiency"))
         return derive(strength.leg_strength, each, self.plies(i), joint, of=f"leg {i + 1} ({leg.name})")
 
-    def geometry(self, axis_tilt: bool) -> list[Term]:
-        """Angles of the legs over the deck plane, or the tilt of the pull's axis."""
-        inputs = self._inputs(known(1.0, "F", "any pull", "force", "the angles do not depend on it"))
-        count = len(self.legs)
-        if axis_tilt:
-            how = Procedure(
-                "angle between the deck's normal and the line from the centre of gravity to the confluence point",
-                lambda *values: float(solve(tuple(values), count).tilt),
-                "geometry",
-            )
-            return [combine(how, inputs, "a", "tilt of the pull's axis", "angle", "deg")]
+    def _away(self, start: Sequence[Term], name: str) -> list[Term]:
+        """The confluence point less another, axis by axis."""
         return [
-            combine(
-                Procedure(
-                    "b = asin(rise/length)",
-                    lambda *values, i=i: float(solve(tuple(values), count).angles[i]),
-                    "geometry",
-                ),
-                inputs,
-                f"b{i + 1}",
-                f"angle of leg {i + 1} ({leg.name}) over the deck plane",
-                "angle",
-                "deg",
-            )
-            for i, leg in enumerate(self.legs)
+            combine(LESS, [end, begin], axis, f"{axis} from {name} to the confluence point", "length", end.unit)
+            for axis, end, begin in zip("xyz", self.apex, start, strict=True)
         ]
+
+    def angles(self) -> list[Term]:
+        """Angle of every leg over the deck plane."""
+        found = []
+        for i, leg in enumerate(self.legs):
+            name = f"leg {i + 1} ({leg.name})"
+            away = self._away(self.place(i), name)
+            length = derive(sling.leg_length, *away, of=name)
+            found.append(derive(sling.leg_angle, away[2], length, of=name, symbol=f"b{i + 1}", unit="deg"))
+        return found
+
+    def tilt(self) -> Term:
+        """Tilt of the pull's axis, from the centre of gravity to the confluence point."""
+        _ = self.legs
+        centre = [self.case.masses.centre_without_canopies(axis) for axis in range(3)]
+        away = self._away(centre, "the centre of gravity")
+        if away[2].value <= 0:
+            raise Failed(str(Outcome.NOT_ABOVE))
+        return derive(sling.axis_tilt, *away, unit="deg")

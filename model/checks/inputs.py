@@ -4,20 +4,14 @@ from __future__ import annotations
 
 from model.physics import air, day_air
 from model.quantity import Dimension, show
-from model.rig.errors import InputError, InputProblem
+from model.rig.errors import InputProblem
 from model.rig.reading import RigFile
 from model.rig.rig import point
 
 
-def verify(rig_file: RigFile) -> None:
-    """Refuse fields that contradict each other.
-
-    Raises:
-        InputError: With every contradiction found.
-    """
-    problems = [*_air(rig_file), *_leg_lengths(rig_file)]
-    if problems:
-        raise InputError(problems)
+def verify(rig_file: RigFile) -> list[InputProblem]:
+    """Every contradiction between fields that takes physics to find."""
+    return [*_air(rig_file), *_leg_lengths(rig_file), *_leaving(rig_file)]
 
 
 def _air(rig_file: RigFile) -> list[InputProblem]:
@@ -55,14 +49,25 @@ def _leg_lengths(rig_file: RigFile) -> list[InputProblem]:
         return [
             rig_file.problem(("leg", 0, "length"), f'"{lengths[0].text}"', f"lengths that meet in one point ({error})")
         ]
-    if apex.worst <= sling.MISFIT_ALLOWED:
-        return []
     found = []
-    for i, (length, misfit) in enumerate(zip(lengths, apex.misfits, strict=True)):
+    for i, (length, place, misfit) in enumerate(zip(lengths, places, apex.misfits, strict=True)):
         if abs(misfit) > sling.MISFIT_ALLOWED:
             fits = show(length.value * (1 + float(misfit)), Dimension.LENGTH, length.unit)
             expected = (
                 f"lengths that meet in one point within 1 %: {fits} would fit the other legs, {abs(misfit):.1%} off"
             )
             found.append(rig_file.problem(("leg", i, "length"), f'"{length.text}"', expected))
+        elif apex.worst <= sling.MISFIT_ALLOWED and apex.point[2] <= place[2]:
+            expected = "lengths that meet above the attachment"
+            found.append(rig_file.problem(("leg", i, "length"), f'"{length.text}"', expected))
     return found
+
+
+def _leaving(rig_file: RigFile) -> list[InputProblem]:
+    """An extraction that takes all of the airspeed."""
+    leaving, airspeed = rig_file.rig.exit, rig_file.rig.drop.airspeed
+    lost = leaving.extraction.speed_lost if leaving and leaving.extraction else None
+    if lost is None or airspeed is None or lost.value == 0 or lost.value < airspeed.value:
+        return []
+    expected = f'less than the airspeed, "{airspeed.text}"'
+    return [rig_file.problem(("exit", "extraction", "speed_lost"), f'"{lost.text}"', expected)]

@@ -6,8 +6,8 @@ from functools import cached_property
 
 from model.checks.balance import smaller_side
 from model.checks.case import Case
-from model.checks.descent import rate_is_measured, vertical_at_touchdown
-from model.checks.missing import CannotJudge, Missing, need, row
+from model.checks.descent import measured_cautions, rate_is_measured, vertical_at_touchdown
+from model.checks.missing import CannotJudge, Failed, Missing, need, row
 from model.checks.step import Outcome, Step
 from model.checks.term import LESS, SAME, Procedure, Term, combine, derive, known, least, read, read_count, total
 from model.physics import cushion, overturn
@@ -18,6 +18,8 @@ from model.rig.rig import plan_point
 
 BOTTOMS = "the stack bottoms: it needs more height or more area"
 CANNOT_STOP = "the stack cannot stop the load: its crush force is not over the weight; more area or a harder stack"
+TOO_HARD = "too hard: less area or a softer stack, with more layers where it then bottoms"
+TOO_SOFT = "too soft or too thin: more area or a harder stack, or more layers"
 NET = "net deceleration; the load feels one g0 more"
 
 
@@ -133,7 +135,23 @@ class Cushioning:
 
 
 def _outcome(case: Case, result: Term, trouble: str, cautions: tuple[str, ...] = ()) -> Outcome:
-    return Outcome(result, cautions=cautions, notes=(NET,), fails=trouble, measured=rate_is_measured(case))
+    return Outcome(
+        result,
+        cautions=(*cautions, *measured_cautions(case.open_at_end)),
+        notes=(NET,),
+        fails=trouble,
+        measured=rate_is_measured(case),
+        outside=TOO_HARD,
+    )
+
+
+def _geometry(case: Case, result: Term) -> Outcome:
+    """A step that needs no rate of descent: it stands on its own where there is none."""
+    try:
+        measured = rate_is_measured(case)
+    except (Missing, CannotJudge):
+        measured = False
+    return Outcome(result, measured=measured)
 
 
 def _deceleration(case: Case) -> Outcome:
@@ -147,7 +165,7 @@ def _fragility(case: Case) -> Outcome:
     if not items:
         raise Missing("item fragility")
     if stacks.net.value <= 0:
-        return _outcome(case, stacks.net, CANNOT_STOP)
+        raise Failed(CANNOT_STOP)
     factors = []
     for i, item in items:
         field = row("item", i, item.name, "fragility")
@@ -175,8 +193,9 @@ def fragility_ratio(fragility: Real, net: Real) -> Real:
 def _crush_reserve(case: Case) -> Outcome:
     stacks = case.cushioning
     if stacks.net.value <= 0:
-        return _outcome(case, stacks.net, CANNOT_STOP)
-    return Outcome(stacks.reserve, measured=rate_is_measured(case))
+        raise Failed(CANNOT_STOP)
+    cautions = measured_cautions(case.open_at_end)
+    return Outcome(stacks.reserve, cautions=cautions, measured=rate_is_measured(case), outside=TOO_SOFT)
 
 
 def _centre(case: Case) -> Outcome:
@@ -205,9 +224,8 @@ def _centre(case: Case) -> Outcome:
             combine(LESS, [centre, above], f"d{'xy'[axis]}", f"offset in {'xy'[axis]}", "length", places[0][axis].unit)
         )
     how = Procedure("d = hypot(dx, dy)", lambda dx, dy: (dx * dx + dy * dy) ** 0.5, "geometry")
-    return Outcome(
-        combine(how, offsets, "d", "crush-force centre from the centre of gravity above it", "length", offsets[0].unit)
-    )
+    meaning = "crush-force centre from the centre of gravity above it"
+    return _geometry(case, combine(how, offsets, "d", meaning, "length", offsets[0].unit))
 
 
 def _weighted(*values: float) -> float:
@@ -225,7 +243,7 @@ def speed_across(case: Case) -> Term:
 
 
 def _speed_across(case: Case) -> Outcome:
-    return Outcome(speed_across(case))
+    return _geometry(case, speed_across(case))
 
 
 def _overturn(case: Case) -> Outcome:
@@ -240,7 +258,7 @@ def _overturn(case: Case) -> Outcome:
     inertia = derive(overturn.tipping_inertia, base, centre, height)
     tipping = derive(overturn.tipping_speed, rise, inertia, centre)
     how = Procedure("tipping speed/speed across", lambda tips, moves: tips / moves, "definition")
-    return Outcome(combine(how, [tipping, across], "k", "tipping speed over speed across", "number"))
+    return _geometry(case, combine(how, [tipping, across], "k", "tipping speed over speed across", "number"))
 
 
 STACK = ("cushion",)

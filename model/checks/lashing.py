@@ -114,9 +114,8 @@ def _direction(direction: str) -> Callable[[Case], Outcome]:
         if restraint is None:
             raise CannotJudge("no limit set: the limit set has no [restraint]")
         factor = need(getattr(restraint, direction), f"restraint.{direction}")
-        term = given(
-            factor, "a", f"restraint factor {direction}, {restraint.source}", f"limit set, restraint.{direction}"
-        )
+        origin = f"limit set, restraint.{direction}, {restraint.source}"
+        term = known(factor.value, "a", f"restraint factor {direction}", "number", origin)
         if term.value == 0:
             raise CannotJudge(f"restraint.{direction} is 0: nothing is asked for")
         needed_mass = restrained(case)

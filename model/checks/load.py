@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from model.checks.case import Case
-from model.checks.missing import Failed, Missing
+from model.checks.missing import Missing
 from model.checks.step import Outcome, Step, own_limit
 from model.checks.term import SAME, Term, combine, derive, given, known, read, total
 from model.physics import balance
@@ -62,7 +62,7 @@ def _length(case: Case) -> Outcome:
 def _per_canopy(case: Case) -> Outcome:
     mains = [one for one in case.rows if one.row.role == "main"]
     if not mains:
-        raise Failed("no main canopy")
+        raise Missing("canopy with role main")
     counts = [one.count for one in mains]
     count = counts[0] if len(counts) == 1 else total(counts, "N", "main canopies")
     each = derive(balance.mass_per_canopy, case.masses.suspended, count, unit=case.masses.suspended.unit)
@@ -70,7 +70,7 @@ def _per_canopy(case: Case) -> Outcome:
     for one in mains:
         if one.row.rated_mass is not None:
             least, most = one.row.rated_mass
-            limits.append(own_limit("kg", f"rig file, {one.field('rated_mass')}", least, most))
+            limits.append(own_limit("kg", least, most))
     return Outcome(each, tuple(limits))
 
 

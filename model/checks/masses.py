@@ -31,6 +31,7 @@ CENTRE_WITHOUT = Procedure(
     "(mass x coordinate - sum of part mass x its coordinate) / (mass - sum of part masses)", _centre_without, "statics"
 )
 AXES = ("x", "y", "z")
+Place = tuple[Quantity, Quantity, Quantity]
 
 
 class Masses:
@@ -42,10 +43,11 @@ class Masses:
 
     @cached_property
     def platform(self) -> Term | None:
-        """Mass of the platform; None where it is left out on purpose."""
-        if "platform" in self.left_out:
+        """Mass of the platform; None where it is left out on purpose and no mass is given."""
+        platform = self.rig.platform
+        if "platform" in self.left_out and (platform is None or platform.mass is None):
             return None
-        platform = need(self.rig.platform, "platform")
+        platform = need(platform, "platform")
         return read(platform.mass, "m", "mass of the platform", "platform.mass")
 
     @cached_property
@@ -82,10 +84,14 @@ class Masses:
     @cached_property
     def extraction(self) -> Term | None:
         """Mass of the extraction parachutes; None where there are none."""
-        extraction = self.rig.exit.extraction if self.rig.exit else None
-        if extraction is None or self.rig.exit is None or self.rig.exit.method != "extraction":
+        leaving = self.rig.exit
+        extraction = leaving.extraction if leaving else None
+        if leaving is None or (
+            extraction is None and (leaving.method != "extraction" or "extraction" in self.left_out)
+        ):
             return None
-        mass = need(extraction.mass, "exit.extraction.mass")
+        need(leaving.method, "exit.method")
+        mass = need(need(extraction, "exit.extraction").mass, "exit.extraction.mass")
         return given(mass, "me", "mass of the extraction parachutes", "exit.extraction.mass")
 
     @cached_property
@@ -113,7 +119,7 @@ class Masses:
         """Falling mass m: M less an extraction parachute that does not stay."""
         rigged = self.rigged
         extraction = self.rig.exit.extraction if self.rig.exit else None
-        if self.extraction is None or (extraction and extraction.stays):
+        if self.extraction is None or extraction is None or need(extraction.stays, "exit.extraction.stays"):
             return combine(SAME, [rigged], "m", "falling mass", "mass", rigged.unit)
         return combine(LESS, [rigged, self.extraction], "m", "falling mass", "mass", rigged.unit)
 
@@ -123,26 +129,45 @@ class Masses:
         falling = self.falling
         return combine(LESS, [falling, *self.canopies], "ms", "suspended mass", "mass", falling.unit)
 
+    def _place(self, axis: int, point: Place | None, field: str, name: str) -> Term:
+        reading = need(point, field)[axis]
+        place = along(self.rig, reading) if axis == 0 else reading.value
+        return known(place, AXES[axis], f"{AXES[axis]} of {name}", "length", field, reading.unit)
+
+    def _platform_place(self, axis: int) -> Term:
+        platform = need(self.rig.platform, "platform")
+        return self._place(axis, platform.centre, "platform.centre", "the platform")
+
     def _places(self, axis: int, *, canopies: bool) -> tuple[list[Term], list[Term]]:
         """Masses and one coordinate of platform, items and (or only) canopies."""
         masses: list[Term] = []
         places: list[Term] = []
 
-        def put(mass: Term, point: tuple[Quantity, Quantity, Quantity] | None, field: str, name: str) -> None:
+        def put(mass: Term, point: Place | None, field: str, name: str) -> None:
             masses.append(mass)
-            reading = need(point, field)[axis]
-            place = along(self.rig, reading) if axis == 0 else reading.value
-            places.append(known(place, AXES[axis], f"{AXES[axis]} of {name}", "length", field, reading.unit))
+            places.append(self._place(axis, point, field, name))
 
         if not canopies:
             if self.platform is not None:
-                put(self.platform, need(self.rig.platform, "platform").centre, "platform.centre", "the platform")
+                masses.append(self.platform)
+                places.append(self._platform_place(axis))
             for i, (item, mass) in enumerate(zip(self.rig.item, self.items, strict=True)):
                 put(mass, item.centre, row("item", i, item.name, "centre"), item.name)
         else:
             for i, (one, mass) in enumerate(zip(self.rig.canopy, self.canopies, strict=True)):
                 put(mass, one.centre, row("canopy row", i, one.role, "centre"), f"canopy row {i + 1}")
         return masses, places
+
+    @property
+    def balanced(self) -> bool:
+        """Whether a measured balance point stands in place of the sum."""
+        return self.rig.platform is not None and self.rig.platform.balanced_at is not None
+
+    @cached_property
+    def in_place(self) -> Term:
+        """Sum of the parts that have a place in the rig file: platform, items and canopies."""
+        terms = [*([self.platform] if self.platform else []), *self.items, *self.canopies]
+        return total(terms, "Mp", "parts in place")
 
     def centre(self, axis: int) -> Term:
         """One coordinate of the centre of gravity of platform, items and canopies."""
@@ -156,24 +181,24 @@ class Masses:
         return combine(CENTRE, [*masses, *more, *places, *further], name, "centre of gravity, canopies in", "length")
 
     def centre_above(self, axis: int, *, platform: bool) -> Term:
-        """One coordinate of the centre of gravity of the items over a stack, with or without the platform."""
-        if platform:
+        """One coordinate of the centre of gravity over a stack: without canopies, with or without the platform."""
+        if platform or self.platform is None:
             return self.centre_without_canopies(axis)
+        if self.balanced and axis < 2:
+            under = self._platform_place(axis)
+            masses, places = self._places(axis, canopies=True)
+            terms = [self.in_place, self.centre(axis), self.platform, *masses, under, *places]
+            return combine(CENTRE_WITHOUT, terms, f"{AXES[axis]}g", "centre of gravity of the items", "length")
         masses, places = self._places(axis, canopies=False)
-        if self.platform is not None:
-            masses, places = masses[1:], places[1:]
+        masses, places = masses[1:], places[1:]
         return combine(CENTRE, [*masses, *places], f"{AXES[axis]}g", "centre of gravity of the items", "length")
 
     def centre_without_canopies(self, axis: int) -> Term:
         """One coordinate of the centre of gravity of platform and items alone."""
         name = f"{AXES[axis]}g"
-        balanced = self.rig.platform.balanced_at if self.rig.platform else None
-        if balanced is not None and axis < 2:
+        if self.balanced and axis < 2:
             masses, places = self._places(axis, canopies=True)
-            parts = total(
-                [*([self.platform] if self.platform else []), *self.items, *self.canopies], "Mp", "parts in place"
-            )
-            terms = [parts, self.centre(axis), *masses, *places]
+            terms = [self.in_place, self.centre(axis), *masses, *places]
             return combine(CENTRE_WITHOUT, terms, name, "centre of gravity without canopies", "length")
         masses, places = self._places(axis, canopies=False)
         return combine(CENTRE, [*masses, *places], name, "centre of gravity without canopies", "length")

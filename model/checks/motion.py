@@ -78,18 +78,23 @@ class Motions:
         """Rigged height over the platform's underside."""
         platform = need(self.rig.platform, "platform")
         height = read(platform.height, "h", "highest point over the deck", "platform.height")
-        if platform.depth is None:
-            depth = known(0.0, "d", "deck thickness", "length", "none given: 0", height.unit)
-        else:
-            depth = given(platform.depth, "d", "deck thickness", "platform.depth")
-        return derive(balance.height_over_underside, height, depth, unit=height.unit)
+        return derive(balance.height_over_underside, height, self.depth, unit=height.unit)
+
+    @cached_property
+    def depth(self) -> Term:
+        """Thickness of the deck; 0 where none is given."""
+        depth = need(self.rig.platform, "platform").depth
+        if depth is None:
+            return known(0.0, "d", "deck thickness", "length", "none given: 0", "mm")
+        return given(depth, "d", "deck thickness", "platform.depth")
 
     def _line_stretch(self, first: CanopyRow) -> tuple[str, Term]:
         """How the first row comes to line stretch: a known time, or the distance from the aircraft."""
         leaving = need(self.rig.exit, "exit")
+        method = need(leaving.method, "exit.method")
         if leaving.line_stretch is not None:
             return "line_stretch", given(leaving.line_stretch, "tls", "line stretch after release", "exit.line_stretch")
-        if need(leaving.canopy_pulled_by, "exit.canopy_pulled_by") != "static line" or leaving.method == "extraction":
+        if need(leaving.canopy_pulled_by, "exit.canopy_pulled_by") != "static line" or method == "extraction":
             raise Missing("exit.line_stretch")
         static = need(leaving.static_line, "exit.static_line")
         parts = [

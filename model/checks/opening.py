@@ -5,7 +5,7 @@ from __future__ import annotations
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, need
 from model.checks.rows import CanopyRow
-from model.checks.step import Outcome, Step, own_limit
+from model.checks.step import Outcome, Row, Step, own_limit
 from model.checks.term import Term, derive, given, least, read, read_count
 from model.physics import balance, strength
 from model.physics.formula import formula
@@ -41,6 +41,7 @@ def canopy_share(case: Case, one: CanopyRow) -> Term:
 
 def canopy_factor(case: Case, one: CanopyRow) -> Term:
     """Strength of one canopy over the load of the row's worst."""
+    case.forces.must_open()
     allowed = read(one.row.strength, "S", f"strength, {one.name}", one.field("strength"))
     return derive(strength.strength_ratio, allowed, canopy_share(case, one), of=f"canopy of {one.name}")
 
@@ -67,18 +68,13 @@ def speed_at_stretch(case: Case, one: CanopyRow) -> Term:
 
 
 def _speed(case: Case) -> Outcome:
-    """The row nearest to its own rated speed, or the fastest where none is rated."""
-    found = []
+    """Every row against its own rated speed and the limit set."""
+    rows = []
     for one in case.rows:
-        term = speed_at_stretch(case, one)
         rated = one.row.rated_speed
-        limits = (own_limit("m/s", f"rig file, {one.field('rated_speed')}", most=rated),) if rated else ()
-        nearest = limits[0].margin(term.value) if limits else None
-        found.append((nearest if nearest is not None else float("inf"), -term.value, term, limits))
-    _, _, term, limits = min(found, key=lambda entry: entry[:2])
-    unrated = [one.field("rated_speed") for one in case.rows if one.row.rated_speed is None]
-    cautions = tuple(f"no {field}: that row is judged by the limit set alone" for field in unrated) if limits else ()
-    return Outcome(term, limits, cautions=cautions, measured=case.forces.measured_all())
+        limits = (own_limit("m/s", most=rated),) if rated else ()
+        rows.append(Row(speed_at_stretch(case, one), limits, one.field("rated_speed")))
+    return Outcome(rows[0].result, measured=case.forces.measured_all(), rows=tuple(rows))
 
 
 def snatch_of(case: Case, one: CanopyRow) -> Term:
@@ -130,6 +126,7 @@ def snatch_factor(case: Case, one: CanopyRow) -> Term:
 
 
 def _snatch(case: Case) -> Outcome:
+    case.forces.must_open()
     factors = [snatch_factor(case, one) for one in case.rows if snatch_of(case, one).value > 0]
     if not factors:
         raise CannotJudge("no snatch: load and canopies move alike at line stretch")
@@ -147,6 +144,7 @@ def line_share(case: Case, one: CanopyRow) -> Term:
 
 def line_factor(case: Case, one: CanopyRow) -> Term:
     """Strength of one line over its share."""
+    case.forces.must_open()
     _, each = _lines(one)
     return derive(strength.strength_ratio, each, line_share(case, one), of=f"one line of {one.name}")
 

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from datetime import date
+from calendar import isleap
+from datetime import MAXYEAR, date
 
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, Missing, need, row
@@ -43,8 +44,7 @@ def _holds(i: int, tie: Tie) -> Outcome:
     knot = read(tie.knot_efficiency, "eta", f"knot efficiency, {tie.name}", field)
     result = derive(strength.tie_strength, _strands(i, tie), each, knot, of=tie.name)
     asked = tie.holds_at_least
-    source = f"rig file, {row('tie', i, tie.name, 'holds_at_least')}"
-    return Outcome(result, (own_limit("N", source, least=asked),) if asked else ())
+    return Outcome(result, (own_limit("N", least=asked),) if asked else ())
 
 
 def _breaks(i: int, tie: Tie) -> Outcome:
@@ -52,8 +52,7 @@ def _breaks(i: int, tie: Tie) -> Outcome:
     each = read(tie.strand_strength_most, "S", f"greatest strength of a strand, {tie.name}", field)
     result = derive(strength.tie_strength_most, _strands(i, tie), each, of=tie.name)
     asked = tie.breaks_by
-    source = f"rig file, {row('tie', i, tie.name, 'breaks_by')}"
-    return Outcome(result, (own_limit("N", source, most=asked),) if asked else ())
+    return Outcome(result, (own_limit("N", most=asked),) if asked else ())
 
 
 def device_steps(rig: Rig) -> list[Step]:
@@ -71,7 +70,7 @@ def device_steps(rig: Rig) -> list[Step]:
             return _expires(case, i, device)
 
         name, tables = device.name, ("device",)
-        if device.kind == "ground release":
+        if device.kind in ("ground release", None):
             title = f"{name}: arms after the canopies are open"
             found.append(Step(f"device.{name}.early", title, "1", early, limit_key="device.early", tables=tables))
             title = f"{name}: arms before touchdown"
@@ -85,6 +84,7 @@ RATIO = Procedure("quotient of the lines above", lambda over, under: over / unde
 
 
 def _arms(i: int, device: Device) -> Term:
+    need(device.kind, row("device", i, device.name, "kind"))
     field = row("device", i, device.name, "arms_after")
     return read(device.arms_after, "ta", f"{device.name} arms after release", field)
 
@@ -94,12 +94,13 @@ def _times_measured(case: Case) -> bool:
 
 
 def _early(case: Case, i: int, device: Device) -> Outcome:
+    arms = _arms(i, device)
     case.forces.must_open()
     last = sum(len(one.fillings) for one in case.rows) - 1
     full = case.motions.flown(
         case.heights.rule, lambda motion: motion.end_time[last, 0], "tf", "time of full opening", "time"
     )
-    result = combine(RATIO, [_arms(i, device), full], "k", "arming over full opening", "number")
+    result = combine(RATIO, [arms, full], "k", "arming over full opening", "number")
     return Outcome(result, cautions=case.forces.cautions, measured=_times_measured(case))
 
 
@@ -174,10 +175,8 @@ def _age(case: Case, i: int) -> Outcome:
 
 def _anniversary(made: date, year: int) -> date:
     """The same day in another year; 29 February falls on 1 March where there is none."""
-    try:
-        return made.replace(year=year)
-    except ValueError:
-        return date(year, 3, 1)
+    leaps = (made.month, made.day) == (2, 29) and not isleap(year)
+    return date(year, 3, 1) if leaps else made.replace(year=year)
 
 
 def age_in_years(made: date, on: date) -> float:
@@ -185,5 +184,7 @@ def age_in_years(made: date, on: date) -> float:
     years = on.year - made.year
     if on < _anniversary(made, on.year):
         years -= 1
-    last, following = _anniversary(made, made.year + years), _anniversary(made, made.year + years + 1)
-    return years + (on - last).days / (following - last).days
+    last = _anniversary(made, made.year + years)
+    if last.year == MAXYEAR:
+        return years + (on - last).days / 365
+    return years + (on - last).days / (_anniversary(made, last.year + 1) - last).days

@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from dataclasses import dataclass, field
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, field, replace
 from math import isfinite
 
 from model.checks.case import Case
@@ -11,6 +11,17 @@ from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Verdic
 from model.checks.missing import CannotJudge, Failed, Missing
 from model.checks.term import Term, cautions
 from model.quantity import Quantity
+
+NO_NUMBER = "no number comes out of these data"
+
+
+@dataclass(frozen=True)
+class Row:
+    """One of several values that a step judges, each against limits of its own; ``lacks`` names the field for them."""
+
+    result: Term
+    own_limits: tuple[Limit, ...]
+    lacks: str
 
 
 @dataclass(frozen=True)
@@ -24,8 +35,12 @@ class Outcome:
     fails: str = ""
     measured: bool = False
     opens: str = ""
+    outside: str = ""
+    """Which way to go where the value is outside its limit."""
     passes: str = ""
     """Why it passes without a limit; such a step is all or nothing and has no margin."""
+    rows: tuple[Row, ...] = ()
+    """Where each row of the rig has limits of its own; the one that decides takes the place of ``result``."""
 
 
 @dataclass(frozen=True)
@@ -72,11 +87,11 @@ def value_in_unit(value: float, dimension: str, unit: str) -> float:
     return value / known.size if dimension == known.dimension else value
 
 
-def own_limit(unit: str, source: str, least: Quantity | None = None, most: Quantity | None = None) -> Limit:
+def own_limit(unit: str, least: Quantity | None = None, most: Quantity | None = None) -> Limit:
     """A limit written in the rig file."""
     size = STEP_UNITS[unit].size
     shown = (most or least).unit if (most or least) else None  # type: ignore[union-attr]
-    return Limit(least.value / size if least else None, most.value / size if most else None, source, shown)
+    return Limit(least.value / size if least else None, most.value / size if most else None, "rig file", shown)
 
 
 def tighter(limits: list[Limit]) -> Limit | None:
@@ -92,6 +107,26 @@ def tighter(limits: list[Limit]) -> Limit | None:
     return Limit(low.minimum if low else None, high.maximum if high else None, source, binding[-1].shown_in)
 
 
+def worst(rows: Sequence[Row], unit: str, ruling: Ruling) -> tuple[Row, str]:
+    """The row that decides a step, and why it leaves the step open, if it does.
+
+    A row that fails goes before one without a limit, that one before the least margin. Where no row has a limit, it is
+    the largest value.
+    """
+    places = []
+    for one in rows:
+        value = in_step_unit(one.result, unit)
+        limit = tighter([*one.own_limits, *([ruling.limit] if ruling.limit else [])])
+        if limit is None:
+            places.append((1, -value, one))
+        else:
+            margin = limit.margin(value)
+            places.append((2 if limit.holds(value) else 0, margin if margin is not None else 0.0, one))
+    rank, _, found = min(places, key=lambda place: place[:2])
+    limited = any(place[0] != 1 for place in places)
+    return found, f"data missing: {found.lacks}" if rank == 1 and limited else ""
+
+
 def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
     """Work a step out and lay its limit against it."""
     try:
@@ -102,11 +137,19 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
         return _without_value(step, ruling, Verdict.OPEN, str(cannot))
     except Failed as failed:
         return _without_value(step, ruling, Verdict.FAIL, str(failed))
+    except ArithmeticError:
+        return _without_value(step, ruling, Verdict.OPEN, NO_NUMBER)
+    if outcome.rows:
+        row, opens = worst(outcome.rows, step.unit or "1", ruling)
+        outcome = replace(outcome, result=row.result, own_limits=row.own_limits, opens=opens)
     value = in_step_unit(outcome.result, step.unit or "1")
     limit = tighter([*outcome.own_limits, *([ruling.limit] if ruling.limit else [])])
     judged = limit is not None and isfinite(value) and not outcome.passes
     margin = limit.margin(value) if limit and judged else None
     verdict, reason = _verdict(step, outcome, ruling, limit, value)
+    if margin is not None and (margin < 0) is not (verdict is Verdict.FAIL):
+        # A margin is negative exactly when the step fails; it says nothing where something else decides.
+        margin = None
     said = [*outcome.cautions, *cautions(outcome.result)]
     if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:
         said.insert(0, f"margin under {CLOSE:.0%}")
@@ -132,7 +175,7 @@ def _verdict(step: Step, outcome: Outcome, ruling: Ruling, limit: Limit | None, 
     if not ruling.judged:
         return Verdict.NOT_COUNTED, _unjudged(ruling)
     if not isfinite(value):
-        return Verdict.OPEN, "no number comes out of these data"
+        return Verdict.OPEN, NO_NUMBER
     if outcome.fails:
         return Verdict.FAIL, outcome.fails
     if outcome.opens:
@@ -147,7 +190,7 @@ def _verdict(step: Step, outcome: Outcome, ruling: Ruling, limit: Limit | None, 
     if ruling.needs_measured and not outcome.measured:
         estimate = "the estimate is within the limit" if holds else "the estimate is outside the limit"
         return Verdict.OPEN, f"needs a measured figure; {estimate}"
-    return (Verdict.PASS if holds else Verdict.FAIL), ""
+    return (Verdict.PASS, "") if holds else (Verdict.FAIL, outcome.outside)
 
 
 def _unjudged(ruling: Ruling) -> str:

@@ -100,11 +100,14 @@ def _link(case: Case) -> Outcome:
 
 
 def _leg_angle(case: Case) -> Outcome:
-    return Outcome(least(case.hanging.geometry(axis_tilt=False), "b", "least leg angle over the deck plane"))
+    fails, measured = case.forces.for_geometry()
+    angle = least(case.hanging.angles(), "b", "least leg angle over the deck plane")
+    return Outcome(angle, fails=fails, measured=measured)
 
 
 def _tilt(case: Case) -> Outcome:
-    return Outcome(case.hanging.geometry(axis_tilt=True)[0])
+    fails, measured = case.forces.for_geometry()
+    return Outcome(case.hanging.tilt(), fails=fails, measured=measured)
 
 
 LEGS = ("leg", "suspension")
