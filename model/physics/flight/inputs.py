@@ -19,6 +19,8 @@ WhenNextOpens: TypeAlias = Literal["stays", "goes at start", "goes at line stret
 
 STANDARD_GRAVITY = 9.80665
 """m/s2."""
+TROPOPAUSE = 6356766.0 * 11000.0 / (6356766.0 - 11000.0)
+"""m, geometric altitude of the geopotential 11 km at which the standard temperature stops falling."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -43,7 +45,7 @@ class Filling:
 
 @dataclass(frozen=True, eq=False)
 class Row:
-    """Canopies of one kind that open together: the first row with a line stretch or a static line, others with a trigger."""
+    """Canopies of one kind that open together; the first row has a line stretch or static line, others a trigger."""
 
     fillings: tuple[Filling, ...]
     line_stretch: Values | None = None
@@ -77,9 +79,10 @@ class Drop:
     ground_altitude: Values = 0.0
     """m, geometric, above mean sea level."""
     winds: tuple[tuple[Values, Values], ...] = ()
-    """(height above ground in m, wind along the track in m/s, tailwind positive), heights rising; linear between, the
-    nearest outside."""
+    """(height above ground in m, wind along the track in m/s, tailwind positive), heights rising; linear between."""
     density_factor: Values = 1.0
+    density_kinks: tuple[float, ...] = (TROPOPAUSE,)
+    """m, altitudes at which the slope of the density jumps."""
     gravity: float = STANDARD_GRAVITY
 
 

@@ -17,7 +17,7 @@ NODES, FEW_NODES = 14, 7
 """Nodes of a piece; of a short free fall and of a glide."""
 GRADE = 2
 """Grade of the first piece of a filling with a fractional exponent."""
-AT_ONCE = 2000
+AT_ONCE = 500
 """Most pieces of one leg."""
 
 Watch = Callable[[Piece, Mask], None]
@@ -72,10 +72,9 @@ class Flyer:
             if not flying.any():
                 break
             layer = self.wind.layer(state.layer)
-            sheared = layer.slope is not None or self.wind.sheared
             span = np.where(flying, end - progress, 0.0)
             growth = Growth(course.base, course.added, course.exponent, begin, span)
-            floor = np.maximum(course.floor, layer.bottom) if sheared else course.floor
+            floor = np.maximum(course.floor, layer.bottom) if self.wind.layered else course.floor
             leg = self._leg(state, replace(course, floor=floor), span * course.full, growth, layer, watch)
             progress = np.where(leg.progress == 1, np.where(flying, end, progress), progress + span * leg.progress)
             state, begin = leg.state, progress
@@ -84,7 +83,7 @@ class Flyer:
             at_floor = at_floor | low
             kink = leg.at_floor & ~low
             flying = kink & (progress < end)
-            if sheared:
+            if self.wind.layered:
                 state = replace(state, layer=state.layer + kink)
         landed = state.landed | at_floor & (course.floor <= self.ground)
         return Stop(replace(state, landed=landed), progress, at_floor, at_event)

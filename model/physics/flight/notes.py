@@ -72,6 +72,7 @@ class Notes:
         record.start_height = np.where(start, state.z - self.ground, np.nan)
         record.nominal = np.where(start, nominal, np.nan)
         record.top_speed = np.where(start, state.speed, 0.0)
+        record.force.time = record.plain.time = record.start_time
 
     def note_end(self, record: FillingRecord, state: State, start: Mask, progress: Array, reached: Array) -> None:
         """Record the end of a filling, and the force at that moment as the first of the hold."""
@@ -79,6 +80,7 @@ class Notes:
         record.full, record.reached = start & (progress >= 1), np.where(start, reached, 0.0)
         record.landed_in = start & state.landed & (progress < 1)
         self.latest = np.where(start, self.number_of(record), self.latest)
+        record.hold.time = record.end_time
         pressure = 0.5 * self.air(state.z) * self.factor * (state.u**2 + state.w**2)
         self.note_hold(pressure, state.t, start)
 

@@ -47,10 +47,10 @@ def largest_speed(piece: Piece, flying: Mask) -> Array:
 
 
 def _largest(piece: Piece, weight: Array | None, flying: Mask) -> tuple[Array, Array, Array, Mask | None]:
-    """The largest weight (U^2 + P^2)/A^2: best node value and time, and the x of cases (the mask) with more between nodes.
+    """The largest weight (U^2 + P^2)/A^2: best node value and time; x of cases (the mask) with more between.
 
-    Only the weight is differentiated as a polynomial: U^2 + P^2 and A grow by powers of ten within a piece, and the slope
-    of such a polynomial is lost in rounding at its small end.
+    Only the weight is differentiated as a polynomial: U^2 + P^2 and A grow by powers of ten within a piece, and the
+    slope of such a polynomial is lost in rounding at its small end.
     """
     nodes, A, square = piece.nodes, piece.A, piece.square
     value = square / (A * A)

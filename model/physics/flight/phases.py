@@ -34,6 +34,12 @@ def _deadline(until: Array) -> Event:
     return lambda piece: late - (piece.start.t + piece.elapsed)
 
 
+def _count(spans: Array, longest: float) -> int:
+    """How many pieces keep all cases within the longest span; lost cases (nan) have no say."""
+    most = float(np.fmax.reduce(spans)) / longest
+    return int(np.ceil(min(most, 1e6))) if most > 1 else 1
+
+
 class Flight:
     """One batch; ``pieces`` multiplies the number of pieces of every phase."""
 
@@ -92,9 +98,9 @@ class Flight:
             return self.to_separation(state, as_array(row.static_line))
         rate = self.rate(z, zero)
         duration = np.minimum(np.maximum(as_array(row.line_stretch), 0), self.longest(state, rate))
-        spans = np.fmax.reduce(duration * rate)
-        pieces = self.pieces * max(1, int(np.ceil(min(spans / SPAN, 1e6))))
-        course = Course(duration, self.ground, zero, nodes=FEW_NODES if spans < 1.5 else NODES, pieces=pieces)
+        spans = duration * rate
+        nodes = FEW_NODES if np.fmax.reduce(spans) < 1.5 else NODES
+        course = Course(duration, self.ground, zero, nodes=nodes, pieces=self.pieces * _count(spans, SPAN))
         return self.flyer.fly(state, course, zero + 1, watch=self.notes.watch_free).state
 
     def to_separation(self, state: State, line: Array) -> State:
@@ -166,8 +172,7 @@ class Flight:
         else:
             rate = self.rate(state.z, area)
             spans = np.minimum(course.full, self.longest(state, rate)) * rate
-        most = np.fmax.reduce(np.where(start, spans, 0.0))
-        return self.pieces * max(1, int(np.ceil(min(most / FILLING_SPAN, 1e6))))
+        return self.pieces * _count(np.where(start, spans, 0.0), FILLING_SPAN)
 
     def hold(self, state: State, until: Array, ahead: NextRow, last: bool) -> State:
         """Constant area until a time, the next row or the ground; ``last``: look for the moment of slow descent."""

@@ -85,7 +85,7 @@ class Piece:
 
     @cached_property
     def square_slope(self) -> Array:
-        """d (U^2 + P^2) / dtau."""
+        """Slope of that square over tau."""
         slope = 2 * self.P * self.A * self.pull
         if self.layer.slope is not None:
             slope += 2 * self.U * self.P * (self.layer.slope * self.pace)
@@ -185,8 +185,8 @@ def by_distance(
 ) -> Piece:
     """Solve a piece that is so long through the air, m, (cases,).
 
-    With sigma = path/length the drag factor is a quadrature, ln A = length * integral of k dsigma, and with H = hypot(U, P)
-    dt/dsigma = length A/H, dP/dsigma = g length A^2/H, dz/dsigma = -length P/H.
+    With sigma = path/length the drag factor is a quadrature, ln A = length * integral of k dsigma, and with
+    H = hypot(U, P) dt/dsigma = length A/H, dP/dsigma = g length A^2/H, dz/dsigma = -length P/H.
     """
     count, cases = len(nodes.x), len(length)
     PA, source, drive, z, density, strength = buffers.get(count, cases)

@@ -37,7 +37,8 @@ class FillingRecord:
             "started": self.started, "start_time": self.start_time, "start_speed": self.start_speed,
             "start_height": self.start_height, "nominal_fill_time": self.nominal, "end_time": self.end_time,
             "fill_time": self.end_time - self.start_time, "full": self.full, "reached": known(self.reached),
-            "fill_path": known(self.path), "speed_ratio": self.top_speed / np.maximum(self.start_speed, 1e-9),
+            "fill_path": known(self.path),
+            "speed_ratio": np.maximum(self.top_speed / np.maximum(self.start_speed, 1e-9), 1),
             "fill_force": self.force.value, "fill_force_time": self.force.time,
             "fill_force_plain": self.plain.value, "fill_force_plain_time": self.plain.time,
             "hold_force": self.hold.value, "hold_force_time": self.hold.time,
@@ -91,7 +92,9 @@ class Stretch:
 
     def at(self, x: Array) -> Array:
         """Values t, x, z, u, w at some x, (5, points)."""
-        t, way, z, U, W, A = self.values @ (self.nodes.powers.T @ power_table(x, len(self.nodes.x)))
+        values = self.values @ (self.nodes.powers.T @ power_table(x, len(self.nodes.x)))
+        values = np.where(x == -1, self.values[:, :1], np.where(x == 1, self.values[:, -1:], values))   # no rounding
+        t, way, z, U, W, A = values
         return np.stack([t, way, z, U / A, W / A])
 
 

@@ -69,7 +69,7 @@ class Motion:
     hold_force_time: Array
 
     slow_time: Array
-    """(cases,), s, first moment after the last filling at 1.05 x the local steady rate or less; nan: lands before."""
+    """(cases,), s, first moment after the last filling at 1.05 x the local steady rate or less; else nan."""
     slow_height: Array
     """m above the ground."""
     touchdown_time: Array
@@ -97,7 +97,7 @@ class Motion:
 
 @dataclass(frozen=True, eq=False)
 class History:
-    """One case from release to the ground; one-axis arrays, time not decreasing, SI. A jump stands twice at one time."""
+    """One case from release to the ground: one-axis arrays, time not decreasing, SI. A jump stands twice."""
 
     time: Array
     height: Array

@@ -30,7 +30,7 @@ class Layer:
 
 
 class Wind:
-    """All layers of all cases; (layers, cases)."""
+    """All layers of all cases; (layers, cases). Kinks of the density part layers too."""
 
     def __init__(self, drop: Drop) -> None:
         ground = as_array(drop.ground_altitude)
@@ -38,6 +38,12 @@ class Wind:
         winds = drop.winds or ((nothing, nothing),)
         heights = np.stack([as_array(height) for height, _ in reversed(winds)]) + ground
         speeds = np.stack([as_array(speed) for _, speed in reversed(winds)])
+        self.sheared = bool((speeds != speeds[0]).any())
+        top = float((ground + as_array(drop.release_height)).max())
+        for kink in drop.density_kinks:
+            if float(ground.min()) < kink < top:
+                heights, speeds = _with_level(heights, speeds, kink)
+        self.layered = self.sheared or len(heights) > len(winds)
         thickness = heights[:-1] - heights[1:]
         slopes = np.where(thickness > 0, (speeds[:-1] - speeds[1:]) / np.where(thickness > 0, thickness, 1), 0.0)
         still = np.zeros((1, len(ground)))
@@ -46,8 +52,7 @@ class Wind:
         self.speeds = np.concatenate((speeds, speeds[-1:]))
         self.slopes = np.concatenate((still, slopes, still))
         self.bottoms = np.concatenate((heights, still - np.inf))
-        self.sheared = bool(slopes.any())
-        self.calm_layer = Layer(ground, speeds[-1], None, nothing - np.inf)
+        self.only_layer = Layer(ground, speeds[-1], None, nothing - np.inf)
 
     def start(self, z: Array) -> NDArray[np.intp]:
         """The layer just below altitudes z, m."""
@@ -55,8 +60,8 @@ class Wind:
 
     def layer(self, index: NDArray[np.intp]) -> Layer:
         """The layers of so many cases, by their numbers."""
-        if not self.sheared:
-            return self.calm_layer
+        if not self.layered:
+            return self.only_layer
         case = np.arange(len(index))
         slope = self.slopes[index, case]
         found = slope if slope.any() else None
@@ -65,3 +70,15 @@ class Wind:
     def at(self, z: Array) -> Array:
         """Wind, m/s, at altitudes z (cases,), m."""
         return self.layer(self.start(z)).at(z)
+
+
+def _with_level(heights: Array, speeds: Array, level: float) -> tuple[Array, Array]:
+    """Heights (falling) and wind speeds with one more level put in, which changes no wind."""
+    at = np.where(level >= heights[0], speeds[0], speeds[-1])
+    for high, low, fast, slow in zip(heights[:-1], heights[1:], speeds[:-1], speeds[1:], strict=True):
+        between = (level < high) & (level >= low)
+        part = np.where(between, (level - low) / np.where(high > low, high - low, 1), 0)
+        at = np.where(between, slow + (fast - slow) * part, at)
+    heights, speeds = np.concatenate((heights, np.full_like(at, level)[None])), np.concatenate((speeds, at[None]))
+    order = np.argsort(-heights, axis=0, kind="stable")
+    return np.take_along_axis(heights, order, 0), np.take_along_axis(speeds, order, 0)

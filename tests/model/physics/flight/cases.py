@@ -15,14 +15,19 @@ from .reference import isa
 RIGS = {
     1: Drop(100, 30.87, 200, 0.6, (Row((Filling(31.4, 58.4),), line_stretch=1.5),), isa),
     2: Drop(1000, 66.88, 400, 3.0, (Row((Filling(233, 156),), line_stretch=2.0),), isa),
-    3: Drop(5000, 66.88, 600, 10.0, (Row((Filling(72.8, 40, 1.0), Filling(1455.7, 120, 3.0, cutter=2.5)), line_stretch=3.0),), isa),
+    3: Drop(
+        5000, 66.88, 600, 10.0,
+        (Row((Filling(72.8, 40, 1.0), Filling(1455.7, 120, 3.0, cutter=2.5)), line_stretch=3.0),), isa,
+    ),
     6: Drop(500, 70, 500, 1.0, (Row((Filling(11.81, 76, 1.0),), line_stretch=1.5),), isa),
 }
 """Four rigs for which an independent solution is known (tests/published/test_motion.py)."""
 
 DROGUE = Row((Filling(12.0, 60.0, 1.0, 1.05),), line_stretch=1.2)
 MAIN = Row((Filling(233.0, 156.0, 2.0, 1.7),), opens_after=9.0, deployment_time=1.5)
-REEFED = Row((Filling(15.0, 40.0, 1.0), Filling(233.0, 120.0, 3.0, 1.3, cutter=3.0)), opens_at_height=700.0, deployment_time=0.8)
+REEFED = Row(
+    (Filling(15.0, 40.0, 1.0), Filling(233.0, 120.0, 3.0, 1.3, cutter=3.0)), opens_at_height=700.0, deployment_time=0.8
+)
 
 
 def cloud(drop: Drop, size: int, seed: int, spread: float = 0.05) -> Drop:
@@ -69,20 +74,23 @@ def features() -> Iterator[tuple[str, Drop]]:
         yield f"main at a height while the drogue fills, which {leaves}", rows(
             two, replace(slow, when_next_opens=leaves), replace(at_height, deployment_time=0.9))
     yield "main at a time while the drogue fills", rows(two, slow, replace(MAIN, opens_after=1.9, deployment_time=0.4))
-    yield "main at a height already passed", rows(two, replace(slow, when_next_opens="goes at line stretch"),
-                                                  replace(at_height, opens_at_height=500.0, deployment_time=0.7))
+    yield "main at a height already passed", rows(
+        two, replace(slow, when_next_opens="goes at line stretch"),
+        replace(at_height, opens_at_height=500.0, deployment_time=0.7))
     yield "main before the drogue's cutter", rows(
         two, replace(DROGUE, fillings=(*DROGUE.fillings, Filling(40.0, 30.0, cutter=20.0))), MAIN, release_height=1500)
-    yield "three rows", rows(two, replace(DROGUE, when_next_opens="goes at line stretch"), replace(
-        MAIN, fillings=(Filling(40.0, 90.0, 1.0),), opens_after=6.0), replace(MAIN, opens_after=None, opens_at_height=500.0),
-        release_height=1500)
+    yield "three rows", rows(
+        two, replace(DROGUE, when_next_opens="goes at line stretch"),
+        replace(MAIN, fillings=(Filling(40.0, 90.0, 1.0),), opens_after=6.0),
+        replace(MAIN, opens_after=None, opens_at_height=500.0), release_height=1500)
     yield "static line", rows(two, static)
     yield "static line, wind in layers", rows(two, static, winds=wind)
     yield "wind in layers", replace(two, winds=wind)
     yield "strong headwind shear", replace(two, winds=((0.0, -4.0), (400.0, -16.0)))
     yield "constant wind", replace(two, winds=((0.0, 8.0),))
     yield "drogue and main, wind in layers, high ground", rows(
-        two, DROGUE, REEFED, release_height=1500, ground_altitude=1640.0, winds=((0.0, 4.0), (500.0, 9.0), (900.0, 2.0)))
+        two, DROGUE, REEFED, release_height=1500, ground_altitude=1640.0,
+        winds=((0.0, 4.0), (500.0, 9.0), (900.0, 2.0)))
     yield "hot day, thin air", replace(two, density=lambda z: isa(z, 25.0, 98000.0), density_factor=0.97)
     yield "across 11 km", replace(two, release_height=1060, ground_altitude=10000)
     yield "from 12 km", replace(two, release_height=12000)

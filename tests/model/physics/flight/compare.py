@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from model.physics.flight import Drop, solve
+from model.physics.flight import Drop, FillingRule, solve
 
 from .reference import fly, pick
 
@@ -17,9 +17,9 @@ LIMITS = {
 """Largest accepted relative differences."""
 
 
-def differences(drop: Drop, rule: str, cases: list[int]) -> dict[str, float]:
-    """Largest relative differences of some cases; the whole batch is flown at once. inf: one is nan, or not accurate."""
-    motion = solve(drop, rule)      # type: ignore[arg-type]
+def differences(drop: Drop, rule: FillingRule, cases: list[int]) -> dict[str, float]:
+    """Largest relative differences of some cases; the whole batch is flown at once. inf: nan, or not accurate."""
+    motion = solve(drop, rule)
     worst = dict.fromkeys(LIMITS, 0.0)
     for case in cases:
         one = pick(drop, case)

@@ -1,7 +1,7 @@
 """A plain integration of one case, to hold the batch engine against. It shares nothing with the engine but the inputs.
 
-The equations of motion as they stand, x, z, u, w and the way through the air, by an explicit Runge-Kutta method of order 8 at
-rtol 1e-12; every corner (cutter, trigger, line stretch, kink of the wind) ends a run.
+The equations of motion as they stand, x, z, u, w and the way through the air, by an explicit Runge-Kutta method of
+order 8 at rtol 1e-12; every corner (cutter, trigger, line stretch, kink of the wind) ends a run.
 """
 
 from __future__ import annotations
@@ -31,7 +31,8 @@ def isa(z: Any, offset: float = 0.0, pressure: float = 101325.0) -> Any:
     h = 6356766.0 * z / (6356766.0 + z)
     cold = warm - lapse * 11000.0
     t = np.maximum(warm - lapse * h, cold)
-    p = pressure * (t / warm) ** (9.80665 / (gas * lapse)) * np.exp(np.minimum(11000.0 - h, 0.0) * 9.80665 / (gas * cold))
+    p = pressure * (t / warm) ** (9.80665 / (gas * lapse))
+    p = p * np.exp(np.minimum(11000.0 - h, 0.0) * 9.80665 / (gas * cold))
     return p / (gas * (t + offset))
 
 
@@ -71,7 +72,9 @@ class Reference:
         slope = (w1 - w0) / (h1 - h0)
         return (lambda z: w0 + slope * (z - h0)), slope, h0
 
-    def go(self, area: Callable[[float, Any], float], until: float, floor: float, stop: Any = None) -> tuple[list[Run], str]:
+    def go(
+        self, area: Callable[[float, Any], float], until: float, floor: float, stop: Any = None
+    ) -> tuple[list[Run], str]:
         """Fly to a time, down to an altitude, or to where ``stop(t, y)`` falls through zero."""
         d, runs = self.drop, []
         for _ in range(100):
@@ -91,7 +94,7 @@ class Reference:
             low = max(floor, bottom)
             events = [lambda t, y, low=low: y[1] - low]
             if stop is not None:
-                events.append(lambda t, y: stop(t, y))
+                events.append(stop)
             for event in events:
                 event.terminal, event.direction = True, -1
             s = solve_ivp(
@@ -237,8 +240,8 @@ class Reference:
         self.note("fill_path", self.y[4] - path0)
         self.note("fill_time", self.t - t0)
         self.note("start_time", t0)
-        end = 0.5 * float(self.drop.density(np.array(self.y[1]))) * self.drop.density_factor * (self.y[2]**2 + self.y[3]**2)
-        self.out["hold_force"].append(end * sum(self.open))
+        density = float(self.drop.density(np.array(self.y[1]))) * self.drop.density_factor
+        self.out["hold_force"].append(0.5 * density * (self.y[2] ** 2 + self.y[3] ** 2) * sum(self.open))
 
     def note_hold(self, runs: list[Run]) -> None:
         """Forces under constant areas."""
@@ -249,7 +252,7 @@ class Reference:
 
     def hold(self, until: float, advance: Any, last: bool) -> None:
         """Constant area; after the last filling also the moment of slow descent."""
-        total, height = sum(self.open), self.y[1]
+        total = sum(self.open)
         runs, _ = advance(lambda t, y: total, until)
         self.note_hold(runs)
         if not last:
@@ -266,10 +269,9 @@ class Reference:
             slow = np.array([excess(run, t) for t in grid]) <= 0
             if slow.any():
                 i = int(slow.argmax())
-                when = grid[0] if i == 0 else brentq(lambda t: excess(run, t), grid[i - 1], grid[i], xtol=1e-13)  # noqa: B023
+                when = grid[0] if i == 0 else brentq(lambda t, r=run: excess(r, t), grid[i - 1], grid[i], xtol=1e-13)
                 self.out.update(slow_time=when, slow_height=run.solution(when)[1] - ground)
                 return
-        assert height > ground or self.landed
 
 
 def fly(drop: Drop, rule: str) -> dict[str, Any]:
