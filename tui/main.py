@@ -5,26 +5,39 @@ from __future__ import annotations
 import os
 import sys
 from collections.abc import Sequence
+from contextlib import suppress
 
 from tui.command_line.arguments import COMMANDS, parse
 
-INTERRUPTED, PIPE_CLOSED = 130, 141
+UNREADABLE, INTERRUPTED, PIPE_CLOSED = 2, 130, 141
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run rigslate and return its exit status."""
     words = list(sys.argv[1:] if arguments is None else arguments)
+    # The models take no plugins; looking for them costs more than reading a rig.
+    os.environ.setdefault("PYDANTIC_DISABLE_PLUGINS", "__all__")
     _plain_streams()
     try:
         status = _run(words)
-        sys.stdout.flush()
+        if sys.stdout is not None:
+            sys.stdout.flush()
     except KeyboardInterrupt:
         return INTERRUPTED
     except BrokenPipeError:
-        # The reader of the pipe has gone; what Python still holds must not be flushed into it at exit.
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        _drop_output()
         return PIPE_CLOSED
+    except OSError as error:
+        print(f"rigslate: {error.filename or 'output'}: {error.strerror or error}", file=sys.stderr)
+        _drop_output()
+        return UNREADABLE
     return status
+
+
+def _drop_output() -> None:
+    """Nobody takes the output any more; what Python still holds must not be written at exit."""
+    with suppress(OSError, ValueError, AttributeError):
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
 
 
 def _run(words: list[str]) -> int:

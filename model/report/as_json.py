@@ -67,4 +67,4 @@ def unreadable_object(file: str, problems: Iterable[InputProblem]) -> dict[str, 
 
 def document(rigs: list[dict[str, Any]]) -> str:
     """The one object that `check --json` prints."""
-    return json.dumps({"format": 1, "rigs": rigs}, ensure_ascii=False, indent=1, allow_nan=False)
+    return json.dumps({"format": 1, "rigs": rigs}, indent=1, allow_nan=False)

@@ -30,7 +30,7 @@ def run(options: argparse.Namespace) -> int:
     results = list(_checked(rigs, computed_only=options.computed))
     lists = [found for _, found in results if isinstance(found, Checklist)]
     if options.json:
-        _print_json(results)
+        _print_json(results, problems)
     else:
         _print_text(results, options)
     return status.of([one.verdict for one in lists], unreadable=bool(problems) or len(lists) < len(results))
@@ -71,7 +71,8 @@ def _checked(rigs: Sequence[Path], *, computed_only: bool) -> Iterator[Result]:
         print("\r" + " " * 40 + "\r", end="", file=sys.stderr, flush=True)
 
 
-def _print_json(results: Sequence[Result]) -> None:
+def _print_json(results: Sequence[Result], elsewhere: Sequence[InputProblem]) -> None:
+    """One object; files that are no rigs stand in it like rigs that could not be read."""
     from model.report.as_json import document, rig_object, unreadable_object
 
     rigs = []
@@ -81,6 +82,8 @@ def _print_json(results: Sequence[Result]) -> None:
         else:
             rigs.append(unreadable_object(str(path), found))
             status.complain(found)
+    for file in dict.fromkeys(one.file for one in elsewhere):
+        rigs.append(unreadable_object(file, [one for one in elsewhere if one.file == file]))
     print(document(rigs))
 
 
