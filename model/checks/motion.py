@@ -32,6 +32,7 @@ class Motions:
         self.rig, self.day = rig, day
         self._falling, self._rows = falling, rows
         self._flown: dict[tuple[str, tuple[float, ...]], Motion] = {}
+        self._settled: dict[str, Motion] = {}
 
     @cached_property
     def rows(self) -> tuple[CanopyRow, ...]:
@@ -187,9 +188,12 @@ class Motions:
 
     def motion(self, rule: Rule) -> Motion:
         """The flight under one rule, or `CannotJudge` where it could not be solved to its accuracy."""
+        if rule in self._settled:
+            return self._settled[rule]
         motion = self.fly(rule, *(term.value for term in self.plan.values()))
         if not bool(motion.accurate[0]):
             raise CannotJudge(f"the motion could not be solved to its accuracy ({rule} rule)")
+        self._settled[rule] = motion
         return motion
 
     def flown(self, rule: Rule, pick: Pick, symbol: str, meaning: str, dimension: str, unit: str | None = None) -> Term:

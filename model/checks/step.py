@@ -9,7 +9,7 @@ from math import isfinite
 from model.checks.case import Case
 from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Verdict
 from model.checks.missing import CannotJudge, Failed, Missing
-from model.checks.term import Term, cautions
+from model.checks.term import Term
 from model.quantity import Quantity
 
 NO_NUMBER = "no number comes out of these data"
@@ -150,7 +150,7 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
     if margin is not None and (margin < 0) is not (verdict is Verdict.FAIL):
         # A margin is negative exactly when the step fails; it says nothing where something else decides.
         margin = None
-    said = [*outcome.cautions, *cautions(outcome.result)]
+    said = [*outcome.cautions, *outcome.result.cautions]
     if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:
         said.insert(0, f"margin under {CLOSE:.0%}")
     return Finding(

@@ -40,7 +40,7 @@ class Term:
     """One value with its symbol, meaning, dimension and origin.
 
     ``value`` is in SI. ``unit`` is the unit the user wrote, if any. A given term has an ``origin``; a derived one has
-    ``how`` and its ``inputs``, in the order of the arguments. A ``caution`` goes with every step that uses the term.
+    ``how`` and its ``inputs``, in the order of the arguments. ``cautions`` are its own and those of all it follows from: they go with every step that uses it.
     ``from_file`` marks a quantity of the rig file, which may be moved.
     """
 
@@ -54,7 +54,7 @@ class Term:
     inputs: tuple[Term, ...] = ()
     notes: tuple[str, ...] = ()
     tolerance: float = 0.0
-    caution: str = ""
+    cautions: tuple[str, ...] = ()
     from_file: bool = False
 
     def again(self) -> float:
@@ -83,7 +83,7 @@ def known(
     value: float, symbol: str, meaning: str, dimension: str, origin: str, unit: str | None = None, caution: str = ""
 ) -> Term:
     """A term from a table or a definition, in SI."""
-    return Term(value, symbol, meaning, dimension, unit, origin, caution=caution)
+    return Term(value, symbol, meaning, dimension, unit, origin, cautions=(caution,) if caution else ())
 
 
 def read(quantity: Quantity | None, symbol: str, meaning: str, field: str) -> Term:
@@ -94,6 +94,11 @@ def read(quantity: Quantity | None, symbol: str, meaning: str, field: str) -> Te
 def read_count(count: int | None, symbol: str, meaning: str, field: str) -> Term:
     """A whole number from a field of the rig file, or `Missing` with the field's name."""
     return known(float(need(count, field)), symbol, meaning, "number", field)
+
+
+def _carried(inputs: Sequence[Term]) -> tuple[str, ...]:
+    """The cautions of several terms, each once."""
+    return tuple(dict.fromkeys(caution for term in inputs for caution in term.cautions))
 
 
 def _like(inputs: Sequence[Term], dimension: str, value: float) -> str | None:
@@ -129,7 +134,18 @@ def derive(
     meaning = f"{how.result.meaning}, {of}" if of else how.result.meaning
     dimension = how.result.dimension
     unit = unit or _like(inputs, dimension, value)
-    return Term(value, symbol or how.result.text, meaning, dimension, unit, "", how, inputs, tuple(notes))
+    return Term(
+        value,
+        symbol or how.result.text,
+        meaning,
+        dimension,
+        unit,
+        "",
+        how,
+        inputs,
+        tuple(notes),
+        cautions=_carried(inputs),
+    )
 
 
 SAME = Procedure("the line above", lambda value: value, "definition")
@@ -148,7 +164,9 @@ def combine(
     """Evaluate a procedure on terms."""
     value = float(how.function(*(term.value for term in inputs)))
     unit = unit or _like(inputs, dimension, value)
-    return Term(value, symbol, meaning, dimension, unit, "", how, tuple(inputs), tuple(notes))
+    return Term(
+        value, symbol, meaning, dimension, unit, "", how, tuple(inputs), tuple(notes), cautions=_carried(inputs)
+    )
 
 
 def _sum(*values: float) -> float:
@@ -188,8 +206,3 @@ def lines(result: Term) -> Iterator[Term]:
         yield term
 
     yield from walk(result)
-
-
-def cautions(result: Term) -> tuple[str, ...]:
-    """The cautions of all terms that lead to ``result``, each once."""
-    return tuple(dict.fromkeys(term.caution for term in lines(result) if term.caution))
