@@ -208,6 +208,12 @@ class TestTruck:
         most = force * loads.max()  # four legs carry
         close(value(self.NAME, "suspension.leg"), 15_000 * 6 * 0.8 * LBF / most)
         close(value(self.NAME, "suspension.tilt"), degrees(atan2(hypot(axis[0], axis[1]), axis[2])))
+        # The links: plate under all, riser under the worst of three canopies, clevis under the worst leg.
+        riser = force / 3 * 1.35
+        close(
+            value(self.NAME, "suspension.link"),
+            min(150_000 * LBF / force, 60_000 * LBF / riser, 60_000 * LBF / most),
+        )
 
 
 class TestHighZone:
