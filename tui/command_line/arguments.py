@@ -5,7 +5,7 @@ from __future__ import annotations
 import argparse
 from collections.abc import Sequence
 
-COMMANDS = ("check", "working")
+COMMANDS = ("check", "working", "report")
 UNITS = ("written", "si", "us")
 EPILOG = """exit status: 0 PASS, 1 FAIL, 3 OPEN, 2 input that cannot be read or a wrong call, 130 interrupted
 without a command: full screen on a rig file or a folder
@@ -60,6 +60,13 @@ def _commands() -> argparse.ArgumentParser:
     working.add_argument("rig", metavar="RIG", help="a rig file")
     working.add_argument("key", metavar="KEY", help="a step key, as 'rigslate check' prints it, or load-path")
     _units(working)
+    report = _command(commands, "report", "report on one rig or on every rig in a folder")
+    report.add_argument("path", metavar="PATH", help="a rig file or a folder")
+    report.add_argument(
+        "-o", dest="output", metavar="FILE", help="where to: FILE.txt, .md or .html (default: text, printed)"
+    )
+    report.add_argument("--working", action="store_true", help="add the lines behind every computed step")
+    _units(report)
     return parser
 
 
