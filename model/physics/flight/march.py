@@ -17,6 +17,10 @@ NODES, FEW_NODES = 14, 7
 """Nodes of a piece; of a short free fall and of a glide."""
 GRADE = 2
 """Grade of the first piece of a filling with a fractional exponent."""
+MORE_LEGS = 300
+"""Most legs of a phase beyond one for each layer."""
+STEEP = 1.0
+"""A wind that changes the load's speed by more than its rate of descent on the way below its layer is followed shortly."""
 AT_ONCE = 500
 """Most pieces of one leg."""
 
@@ -68,25 +72,37 @@ class Flyer:
         progress = np.zeros_like(end) if begin is None else begin
         flying = (end > progress) & ~state.landed & (state.z > course.floor)
         at_floor = at_event = np.zeros_like(flying)
-        for _ in range(len(self.wind.bottoms)):
+        for _ in range(len(self.wind.bottoms) + MORE_LEGS):
             if not flying.any():
                 break
             layer = self.wind.layer(state.layer)
-            span = np.where(flying, end - progress, 0.0)
-            growth = Growth(course.base, course.added, course.exponent, begin, span)
             floor = np.maximum(course.floor, layer.bottom) if self.wind.layered else course.floor
+            left = np.where(flying, end - progress, 0.0)
+            span = left if layer.slope is None else self._within_layer(state, course, layer.slope, floor, left)
+            growth = Growth(course.base, course.added, course.exponent, begin, span)
             leg = self._leg(state, replace(course, floor=floor), span * course.full, growth, layer, watch)
-            progress = np.where(leg.progress == 1, np.where(flying, end, progress), progress + span * leg.progress)
+            progress = np.where(flying & (leg.progress == 1) & (span == left), end, progress + span * leg.progress)
             state, begin = leg.state, progress
             at_event = at_event | leg.at_event
             low = leg.at_floor & (floor <= course.floor)
             at_floor = at_floor | low
             kink = leg.at_floor & ~low
-            flying = kink & (progress < end)
+            flying = (kink | flying & (span < left) & ~leg.at_event & ~low) & (progress < end)
             if self.wind.layered:
                 state = replace(state, layer=state.layer + kink)
+        state = state.with_error(np.where(flying, np.inf, 0.0))
         landed = state.landed | at_floor & (course.floor <= self.ground)
         return Stop(replace(state, landed=landed), progress, at_floor, at_event)
+
+    def _within_layer(self, state: State, course: Course, slope: Array, floor: Array, span: Array) -> Array:
+        """Shorter spans where a steep wind, followed far below its layer, would carry the load off."""
+        height = np.maximum(state.z - floor, 0)
+        g = self.load.gravity
+        vacuum = 2 * height / (state.w + np.sqrt(state.w**2 + 2 * g * height) + 1e-12)
+        reach = 3 * vacuum + 1e-6
+        full = course.full / np.maximum(state.speed, 1e-3) if course.distance else course.full
+        steep = np.abs(slope) * (span * full - reach) > STEEP
+        return np.where(steep, np.minimum(span, reach / full), span)
 
     def _leg(
         self, state: State, course: Course, length: Array, growth: Growth, layer: Layer, watch: Watch | None

@@ -10,6 +10,9 @@ from numpy.typing import NDArray
 from .inputs import Drop, as_array
 from .lobatto import Array
 
+THINNEST = 0.1
+"""m; a wind that changes within less, or jumps, changes over that."""
+
 
 @dataclass(frozen=True, eq=False)
 class Layer:
@@ -36,7 +39,10 @@ class Wind:
         ground = as_array(drop.ground_altitude)
         nothing = np.zeros_like(ground)
         winds = drop.winds or ((nothing, nothing),)
-        heights = np.stack([as_array(height) for height, _ in reversed(winds)]) + ground
+        rising = [as_array(height) for height, _ in winds]
+        for i in range(1, len(rising)):
+            rising[i] = np.maximum(rising[i], rising[i - 1] + THINNEST)
+        heights = np.stack(rising[::-1]) + ground
         speeds = np.stack([as_array(speed) for _, speed in reversed(winds)])
         self.sheared = bool((speeds != speeds[0]).any())
         top = float((ground + as_array(drop.release_height)).max())
@@ -44,8 +50,8 @@ class Wind:
             if float(ground.min()) < kink < top:
                 heights, speeds = _with_level(heights, speeds, kink)
         self.layered = self.sheared or len(heights) > len(winds)
-        thickness = heights[:-1] - heights[1:]
-        slopes = np.where(thickness > 0, (speeds[:-1] - speeds[1:]) / np.where(thickness > 0, thickness, 1), 0.0)
+        thickness = np.maximum(heights[:-1] - heights[1:], 1e-9)
+        slopes = (speeds[:-1] - speeds[1:]) / thickness
         still = np.zeros((1, len(ground)))
         self.tops = heights
         self.levels = np.concatenate((heights, heights[-1:]))

@@ -245,8 +245,7 @@ def test_whatever_is_put_in(drop: Drop, rule: FillingRule) -> None:
         warnings.simplefilter("error")
         motion = solve(drop, rule)
     started, reached_rows = motion.started[:, 0], ~np.isnan(motion.line_stretch_time[:, 0])
-    if not motion.accurate[0]:
-        return
+    assert motion.accurate[0]
     for name, value in numbers(motion).items():
         if name in MAY_BE_UNKNOWN or value.dtype == bool:
             continue

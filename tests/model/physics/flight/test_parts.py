@@ -92,6 +92,9 @@ def test_a_jump_of_the_wind_and_equal_winds() -> None:
     drop = arrays(((100.0, 4.0), (100.0, 9.0)))
     assert Wind(drop).at(np.array([50.0])) == 4.0
     assert Wind(drop).at(np.array([150.0])) == 9.0
+    assert Wind(drop).at(np.array([100.05])) == pytest.approx(6.5)
+    three = Wind(arrays(((0.0, 0.0), (0.0, 1.0), (0.01, 2.0))))
+    assert three.tops[:, 0] == pytest.approx([0.2, 0.1, 0.0])
     even = arrays(((0.0, 4.0), (100.0, 4.0)))
     assert not Wind(even).layered
     assert Wind(even).at(np.array([50.0])) == 4.0
