@@ -2,18 +2,19 @@
 
 from __future__ import annotations
 
-import importlib
 import os
 import re
 import tomllib
 from collections.abc import Iterator
 from pathlib import Path
+from types import ModuleType
 
 import pytest
 
 from docs.blocks import fill
 from docs.make_files import DEFINITIONS, FILES, MISSING, child
 from docs.make_glossary import Quantity, quantities
+from docs.make_pages import SCRIPTS
 from docs.make_validation import files as published
 from model.checks.registry import BY_ROW, FIXED
 from model.rig.reading import read_limits, read_rig
@@ -21,7 +22,6 @@ from model.rig.stick import read_stick
 
 ROOT = Path(__file__).parent.parent
 PAGES = sorted([*ROOT.glob("*.md"), *(ROOT / "docs").glob("*.md")])
-GENERATED = ("methods", "glossary", "files", "validation")
 EXAMPLES = re.findall(r"```toml\n(.*?)```", (ROOT / "docs" / "files.md").read_text(encoding="utf-8"), re.DOTALL)
 FOLDERS = ("model", "tui", "tests", "rigs", "docs", ".ci")
 TEXT = {".py", ".md", ".toml", ".tcss", ".txt", ".svg", ".html", "", ".cfg", ".ini"}
@@ -47,11 +47,17 @@ def found(pattern: str, paths: Iterator[Path]) -> list[str]:
     ]
 
 
-@pytest.mark.parametrize("page", GENERATED)
-def test_generated_parts_are_what_the_code_says(page: str) -> None:
-    script = importlib.import_module(f"docs.make_{page}")
-    written = (ROOT / "docs" / f"{page}.md").read_text(encoding="utf-8")
-    assert written == script.rendered(), f"write it anew: python -m docs.make_{page}"
+@pytest.mark.parametrize("script", SCRIPTS, ids=lambda script: script.PAGE)
+def test_generated_parts_are_what_the_code_says(script: ModuleType) -> None:
+    written = (ROOT / "docs" / script.PAGE).read_text(encoding="utf-8")
+    assert written == script.rendered(), "write it anew: python -m docs.make_pages"
+
+
+def test_no_generated_part_is_without_its_script() -> None:
+    pages = {
+        page.name for page in PAGES if re.search(r"^<!-- generated: ", page.read_text(encoding="utf-8"), re.MULTILINE)
+    }
+    assert pages == {script.PAGE for script in SCRIPTS}
 
 
 def test_a_block_is_written_anew_and_the_rest_left_alone() -> None:
