@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from functools import cached_property
 from typing import TYPE_CHECKING
 
@@ -20,13 +21,15 @@ from model.rig.rig import Exit, Rig
 if TYPE_CHECKING:
     from model.checks.landing import Cushioning
     from model.checks.lashing import Lashings
+    from model.checks.step import Ruling
 
 
 class Case:
     """A rig and its limit set, with masses, air, canopy rows and motion as terms."""
 
-    def __init__(self, rig: Rig, limits: LimitSet | None) -> None:
+    def __init__(self, rig: Rig, limits: LimitSet | None, rulings: Mapping[str, Ruling] | None = None) -> None:
         self.rig, self.limits = rig, limits
+        self.rulings: Mapping[str, Ruling] = rulings or {}
         self.masses = Masses(rig)
         self.day = Day(rig.drop)
         self.motions = Motions(rig, self.day, lambda: self.masses.falling, lambda: self.rows)

@@ -19,6 +19,8 @@ from model.rig.reading import Loaded, load
 from model.rig.rig import TABLES
 from model.rig.standing import standing
 
+LEFT_OUT = "left out on purpose, "
+
 
 def check(path: Path) -> Checklist:
     """Read a rig with its limit set and its record, and check it.
@@ -58,7 +60,7 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
     problems += verify(rig_file)
     if problems:
         raise InputError(problems)
-    case = Case(rig_file.rig, limits.limits if limits else None)
+    case = Case(rig_file.rig, limits.limits if limits else None, rulings)
     limits_raw = limits.raw if limits else None
     standings = standing(entries, rig_file.raw, limits_raw)
     steps = registry.steps(rig_file.rig)
@@ -81,7 +83,7 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         digests=(digest.rigging_digest(rig_file.raw, limits_raw), digest.full_digest(rig_file.raw, limits_raw)),
         signatures=tuple(Signature(one.entry.who, one.entry.when, one.stale) for one in standings.signatures),
         stale=tuple(dict.fromkeys(key for key, one in settled if one.stale)),
-        notes=_notes(limits.limits if limits else None),
+        notes=(*_notes(limits.limits if limits else None), *_left_out_notes(case, findings)),
         details=case,
         content=(rig_file.raw, limits_raw),
     )
@@ -91,6 +93,16 @@ def _notes(limits: LimitSet | None) -> tuple[str, ...]:
     if limits is None:
         return ("no limit set is named in the rig file: nothing can PASS",)
     return (limits.set.note,) if limits.set.note else ()
+
+
+def _left_out_notes(case: Case, findings: Sequence[Finding]) -> list[str]:
+    """What was left out on purpose and how many steps that takes out, so that nobody overlooks it."""
+    notes = []
+    for part in case.rig.left_out:
+        reason = f"{LEFT_OUT}{part.part}: {part.why}"
+        count = sum(one.reason == reason for one in findings)
+        notes.append(f"{reason} (takes {count} step{'' if count == 1 else 's'} out)")
+    return notes
 
 
 def _rulings(loaded: Loaded) -> Mapping[str, Ruling]:
@@ -149,7 +161,7 @@ def _left_out(finding: Finding, case: Case, tables: tuple[str, ...]) -> Finding:
             return replace(
                 finding,
                 verdict=Verdict.NOT_COUNTED,
-                reason=f"left out: {part.why}",
+                reason=f"{LEFT_OUT}{part.part}: {part.why}",
                 value=None,
                 margin=None,
                 cautions=(),

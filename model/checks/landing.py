@@ -16,17 +16,14 @@ from model.physics.types import Real
 from model.quantity import Quantity
 from model.rig.rig import plan_point
 
-BOTTOMS = "the stack bottoms: it needs more height or more area"
-CANNOT_STOP = "the stack cannot stop the load: its crush force is not over the weight; more area or a harder stack"
-TOO_HARD = "too hard: less area or a softer stack, with more layers where it then bottoms"
-TOO_SOFT = "too soft or too thin: more area or a harder stack, or more layers"
+CANNOT_STOP = f"the stack cannot stop the load: {cushion.CushionFit.CANNOT_STOP}"
 NET = "net deceleration; the load feels one g0 more"
 
 
 @formula(
     "W = m g0",
-    result="W | weight over the stack | force",
-    symbols={"mass": "m | mass over the stack | mass"},
+    result="W | weight | force",
+    symbols={"mass": "m | mass | mass"},
     source="definition",
 )
 def weight(mass: Real) -> Real:
@@ -52,7 +49,8 @@ class Cushioning:
     @cached_property
     def under_load(self) -> bool:
         """Whether the stacks lie under the load, on the platform."""
-        return need(self.case.rig.cushion[0].lies, self._field(0, "lies")) == "under the load"
+        places = [need(one.lies, self._field(i, "lies")) for i, one in enumerate(self.case.rig.cushion)]
+        return places[0] == "under the load"
 
     @cached_property
     def forces(self) -> tuple[Term, ...]:
@@ -91,7 +89,7 @@ class Cushioning:
     @cached_property
     def weight(self) -> Term:
         """Weight over the stacks."""
-        return derive(weight, self.mass)
+        return derive(weight, self.mass, of="over the stack")
 
     @cached_property
     def net(self) -> Term:
@@ -131,17 +129,38 @@ class Cushioning:
         """Why the stack fails whatever its deceleration is; empty where it works."""
         if self.net.value <= 0:
             return CANNOT_STOP
-        return BOTTOMS if self.reserve.value < 1 else ""
+        return f"the stack {self.advice}" if self.reserve.value < 1 else ""
+
+    @property
+    def advice(self) -> str:
+        """Which way to change the stack, within the limits on deceleration, fragility and reserve."""
+        asked = self._bound("landing.crush_reserve") or 1.0
+        usable = self.usable.value / max(asked, 1.0)
+        found = cushion.advise(self.force.value, self.weight.value, self.speed.value, usable, self._net_limit())
+        return "" if found.fit is cushion.CushionFit.FITS else str(found.fit)
+
+    def _bound(self, key: str) -> float | None:
+        """The minimum of a limit, or its maximum where it has no minimum."""
+        ruling = self.case.rulings.get(key)
+        limit = ruling.limit if ruling else None
+        return None if limit is None else limit.minimum if limit.minimum is not None else limit.maximum
+
+    def _net_limit(self) -> float | None:
+        """The least net deceleration that the limit and every fragility allow, in g0."""
+        factor = self._bound("landing.fragility") or 1.0
+        allowed = [item.fragility.value / 9.80665 / factor for item in self.case.rig.item if item.fragility]
+        most = self._bound("landing.deceleration")
+        return min([*allowed, *([most] if most is not None else [])], default=None)
 
 
-def _outcome(case: Case, result: Term, trouble: str, cautions: tuple[str, ...] = ()) -> Outcome:
+def _outcome(case: Case, result: Term, trouble: str, notes: tuple[str, ...] = ()) -> Outcome:
     return Outcome(
         result,
-        cautions=(*cautions, *measured_cautions(case.open_at_end)),
-        notes=(NET,),
+        cautions=measured_cautions(case.open_at_end),
+        notes=(NET, *notes),
         fails=trouble,
         measured=rate_is_measured(case),
-        outside=TOO_HARD,
+        outside=case.cushioning.advice,
     )
 
 
@@ -172,7 +191,7 @@ def _fragility(case: Case) -> Outcome:
         fragility = read(item.fragility, "a", f"fragility of {item.name}", field)
         factors.append(derive(fragility_ratio, fragility, stacks.net, of=item.name))
     without = [item.name for item in case.rig.item if item.fragility is None]
-    said = (f"no fragility given: {', '.join(without)}",) if without else ()
+    said = (f"not judged, no fragility given: {', '.join(without)}",) if without else ()
     return _outcome(case, least(factors, "k", "least fragility/net deceleration"), stacks.trouble, said)
 
 
@@ -195,7 +214,7 @@ def _crush_reserve(case: Case) -> Outcome:
     if stacks.net.value <= 0:
         raise Failed(CANNOT_STOP)
     cautions = measured_cautions(case.open_at_end)
-    return Outcome(stacks.reserve, cautions=cautions, measured=rate_is_measured(case), outside=TOO_SOFT)
+    return Outcome(stacks.reserve, cautions=cautions, measured=rate_is_measured(case), outside=stacks.advice)
 
 
 def _centre(case: Case) -> Outcome:

@@ -128,7 +128,7 @@ def _direction(direction: str) -> Callable[[Case], Outcome]:
 def _weight(mass: Term) -> Term:
     from model.checks.landing import weight
 
-    return derive(weight, mass)
+    return derive(weight, mass, of="lashed")
 
 
 def _mixed(case: Case) -> Outcome:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from calendar import isleap
+from collections.abc import Callable
 from datetime import MAXYEAR, date
 
 from model.checks.case import Case
@@ -16,6 +17,8 @@ from model.rig.rig import Rig
 
 def tie_steps(rig: Rig) -> list[Step]:
     """Least it holds and most it may hold, for every tie."""
+    if not rig.tie:
+        return [Step("tie.rows", "Ties: given, or left out on purpose", None, _none_given("tie"), tables=("tie",))]
     found = []
     for i, tie in enumerate(rig.tie):
 
@@ -30,6 +33,15 @@ def tie_steps(rig: Rig) -> list[Step]:
             Step(f"tie.{tie.name}.breaks", f"{tie.name}: most it holds before it breaks", "N", breaks, tables=("tie",))
         )
     return found
+
+
+def _none_given(table: str) -> Callable[[Case], Outcome]:
+    """An absent table leaves a step open until it is given or left out on purpose."""
+
+    def compute(_: Case) -> Outcome:
+        raise Missing(table)
+
+    return compute
 
 
 def _strands(i: int, tie: Tie) -> Term:
@@ -57,6 +69,9 @@ def _breaks(i: int, tie: Tie) -> Outcome:
 
 def device_steps(rig: Rig) -> list[Step]:
     """Arming of ground releases, expiry of every device."""
+    if not rig.device:
+        title = "Devices: given, or left out on purpose"
+        return [Step("device.rows", title, None, _none_given("device"), tables=("device",))]
     found = []
     for i, device in enumerate(rig.device):
 

@@ -147,7 +147,7 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
     judged = limit is not None and isfinite(value) and not outcome.passes
     margin = limit.margin(value) if limit and judged else None
     verdict, reason = _verdict(step, outcome, ruling, limit, value)
-    if margin is not None and (margin < 0) is not (verdict is Verdict.FAIL):
+    if outcome.fails or (margin is not None and (margin < 0) is not (verdict is Verdict.FAIL)):
         # A margin is negative exactly when the step fails; it says nothing where something else decides.
         margin = None
     said = [*outcome.cautions, *outcome.result.cautions]

@@ -40,7 +40,8 @@ class Term:
     """One value with its symbol, meaning, dimension and origin.
 
     ``value`` is in SI. ``unit`` is the unit the user wrote, if any. A given term has an ``origin``; a derived one has
-    ``how`` and its ``inputs``, in the order of the arguments. ``cautions`` are its own and those of all it follows from: they go with every step that uses it.
+    ``how`` and its ``inputs``, in the order of the arguments. ``cautions`` are its own and those of all it
+    follows from: they go with every step that uses it.
     ``from_file`` marks a quantity of the rig file, which may be moved.
     """
 

@@ -163,7 +163,7 @@ def canopy_loading(mass: Real, drag_area: Real) -> Real:
 
 
 @formula(
-    "dh = 0.6 (l + r) cos(gamma)",
+    "dh = 0.6 (l + r) max(0, cos(gamma))",
     result="dh | swing allowance | length",
     symbols={
         "line_length": "l | line length | length",
@@ -176,7 +176,8 @@ def canopy_loading(mass: Real, drag_area: Real) -> Real:
 def swing_allowance(line_length: Real, riser_length: Real, path_angle: Real) -> Real:
     """Give the height, m, that a load loses more than a point mass, because it swings down under its canopies.
 
-    Canopy and load start behind each other along the path; on a path straight down there is nothing to swing.
+    Canopy and load start behind each other along the path; on a path straight down there is nothing to swing, and
+    a path past the vertical takes nothing back.
 
     Args:
         line_length: Suspension line length, m.
@@ -186,7 +187,7 @@ def swing_allowance(line_length: Real, riser_length: Real, path_angle: Real) -> 
     Returns:
         Height, m. Source: derived from the motion of load and canopy as two points.
     """
-    return SWING_SHARE * (line_length + riser_length) * real(np.cos(path_angle))
+    return SWING_SHARE * (line_length + riser_length) * real(np.maximum(0.0, np.cos(path_angle)))
 
 
 def in_handbook_class(diameter: float, loading: float) -> bool:

@@ -37,7 +37,7 @@ def what_would_pass(finding: Finding, system: UnitSystem = UnitSystem.WRITTEN) -
     result, limit = finding.result, finding.limit
     if finding.kind is not Kind.COMPUTED or finding.verdict is not Verdict.FAIL or result is None or limit is None:
         return []
-    if finding.value is None or finding.reason or limit.holds(finding.value):
+    if finding.value is None or finding.margin is None or limit.holds(finding.value):
         return []
     found = []
     for term in _inputs(result):

@@ -59,7 +59,7 @@ def test_a_passing_step_needs_no_advice():
 def test_a_step_that_fails_for_more_than_its_limit_gets_none():
     # The thin honeycomb bottoms: no single number put right turns that verdict by its limit alone.
     for finding in check(RIGS / "13-thin-honeycomb.toml").findings:
-        if finding.verdict is Verdict.FAIL and finding.reason:
+        if finding.verdict is Verdict.FAIL and finding.margin is None:
             assert what_would_pass(finding) == []
 
 
