@@ -61,10 +61,11 @@ def working(finding: Finding, system: UnitSystem) -> list[Line]:
     """All lines that lead to a finding's value, the value itself last; empty for an inspected step."""
     if finding.result is None:
         return []
-    return [_line(term, system) for term in lines(finding.result)]
+    return [term_line(term, system) for term in lines(finding.result)]
 
 
-def _line(term: Term, system: UnitSystem) -> Line:
+def term_line(term: Term, system: UnitSystem) -> Line:
+    """One term as a line of a working."""
     how, value = term.how, term_value(term, system)
     if how is None:
         return Line(term, term.symbol, value, term.meaning, origin=term.origin)
