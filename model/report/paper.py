@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 
 from model.checks.case import Case
-from model.checks.finding import Checklist, Signature, Verdict
+from model.checks.checklist import LEFT_OUT
+from model.checks.finding import Checklist, Finding, Signature, Verdict
 from model.checks.missing import row
 from model.quantity import Quantity, UnitSystem, show_quantity
 from model.rig.canopy import Measured, ReefingMeasured
@@ -76,13 +77,14 @@ def _drop(drop: Drop, system: UnitSystem) -> Iterator[Fact]:
 
 
 APART = (
-    (Verdict.NOT_COUNTED, "left out: ", "Left out on purpose"),
+    (Verdict.NOT_COUNTED, LEFT_OUT, "Left out on purpose"),
     (Verdict.NOT_COUNTED, "not judged", "Computed, not judged by the limit set"),
     (Verdict.NOT_COUNTED, "does not apply", "Looked at: does not apply"),
     (Verdict.NOT_COUNTED, "for information", "For information, no limit set"),
+    (Verdict.NOT_COUNTED, "", "Not counted for another reason"),
     (Verdict.OPEN, "needs a measured figure", "Open until a measured figure stands"),
 )
-"""What stands apart: verdict, how its reason begins, and what such steps are called."""
+"""What stands apart: verdict, how its reason begins, and what such steps are called; the first that fits holds."""
 
 
 def apart(checklist: Checklist, system: UnitSystem) -> list[tuple[str, tuple[str, ...]]]:
@@ -90,12 +92,22 @@ def apart(checklist: Checklist, system: UnitSystem) -> list[tuple[str, tuple[str
     found = [("Changed since it was signed or answered", tuple(_changed(checklist)))]
     deviations = tuple(f"{one.verdict} {one.key}: {one.deviation}" for one in checklist.findings if one.deviation)
     found.append(("Deviations", deviations))
+    steps = list(checklist.findings)
     for verdict, beginning, name in APART:
-        steps = [one for one in checklist.findings if one.verdict is verdict and one.reason.startswith(beginning)]
-        found.append((name, tuple(f"{one.title} ({one.key}): {one.reason}" for one in steps)))
+        these = [one for one in steps if one.verdict is verdict and one.reason.startswith(beginning)]
+        taken = {one.key for one in these}
+        steps = [one for one in steps if one.key not in taken]
+        found.append((name, tuple(_by_reason(these))))
     if isinstance(checklist.details, Case):
         found.append(("Measured figures in the rig file", tuple(_measured(checklist.details, system))))
     return [(name, items) for name, items in found if items]
+
+
+def _by_reason(findings: Sequence[Finding]) -> Iterator[str]:
+    """Steps that share a reason, which stands once."""
+    for reason in dict.fromkeys(one.reason for one in findings):
+        steps = ", ".join(f"{one.title} ({one.key})" for one in findings if one.reason == reason)
+        yield f"{reason}: {steps}"
 
 
 def _changed(checklist: Checklist) -> Iterator[str]:

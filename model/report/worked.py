@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Set
+from collections.abc import Iterator
 from dataclasses import dataclass, replace
 
-from model.checks.finding import Checklist, Kind
-from model.checks.term import Term, lines
+from model.checks.finding import Checklist, Finding, Kind
+from model.checks.term import lines
 from model.quantity import UnitSystem
 from model.report.working import Line, working
 
@@ -32,30 +32,35 @@ class Workings:
 
 def workings(checklist: Checklist, system: UnitSystem) -> tuple[Workings, ...]:
     """The working of every computed step that has a number; a line that several steps share stands once."""
-    blocks: list[Workings] = []
     shown: set[WorkedLine] = set()
-    for one in checklist.findings:
-        if one.kind is Kind.COMPUTED and one.result is not None:
-            found = {id(line.term): _worked(line) for line in working(one, system)}
-            name = f"{one.title} ({one.key})"
-            blocks.append(Workings(name, tuple(_not_yet_shown(one.result, found, shown)), one.notes))
-            shown.update(found.values())
-    return tuple(blocks)
+    return tuple(
+        Workings(f"{one.title} ({one.key})", fresh_lines(one, system, shown), one.notes)
+        for one in checklist.findings
+        if one.kind is Kind.COMPUTED and one.result is not None
+    )
 
 
-def _not_yet_shown(result: Term, found: Mapping[int, WorkedLine], shown: Set[WorkedLine]) -> Iterator[WorkedLine]:
-    """The lines of one step that no earlier step has shown, and its result; each says what it takes from earlier."""
-    here: set[WorkedLine] = set()
-    for term in lines(result):
+def fresh_lines(finding: Finding, system: UnitSystem, shown: set[WorkedLine]) -> tuple[WorkedLine, ...]:
+    """The lines of one step that are not shown yet, and its result; each says what it takes from earlier ones.
+
+    Args:
+        finding: A step with a number.
+        system: Units shown.
+        shown: What earlier steps have shown; the lines of this one are added.
+    """
+    found = {id(line.term): _worked(line) for line in working(finding, system)}
+    fresh: dict[WorkedLine, None] = {}
+    for term in lines(finding.result) if finding.result else ():
         line = found[id(term)]
-        if term is not result and (line in shown or line in here):
+        if line in shown and term is not finding.result:
             continue
-        here.add(line)
-        before = [found[id(one)] for one in term.inputs if found[id(one)] in shown]
+        before = dict.fromkeys(found[id(one)] for one in term.inputs if found[id(one)] in shown)
         if before and term.how is not None and "above" in term.how.text:
             taken = "; ".join(f"{one.symbol} = {one.value}" for one in before)
             line = replace(line, way=(*line.way, f"with, from earlier steps: {taken}"))
-        yield line
+        fresh[line] = None
+    shown.update(found.values())
+    return tuple(fresh)
 
 
 def _worked(line: Line) -> WorkedLine:
