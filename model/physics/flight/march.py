@@ -20,7 +20,7 @@ GRADE = 2
 MORE_LEGS = 300
 """Most legs of a phase beyond one for each layer."""
 STEEP = 1.0
-"""A wind that changes the load's speed by more than its rate of descent on the way below its layer is followed shortly."""
+"""Legs are kept short where a wind, followed below its layer, would change more than so many rates of descent."""
 AT_ONCE = 500
 """Most pieces of one leg."""
 

@@ -160,11 +160,7 @@ def by_time(
         if iteration and np.fmax.reduce(left) < CONVERGED:
             break
     ripple = 0.02 * _ripple(nodes, drive, A[-1]) + 0.1 * _ripple(nodes, density, density[-1])
-    u = U / A
-    x = start.x + duration * (nodes.integral[-1] @ (u * fall + layer.at(z)))
-    error = np.maximum(start.error, np.maximum(left, ripple))
-    w = P[-1] / A[-1] * fall
-    end = State(start.t + duration, x, z[-1].copy(), u[-1] * fall, w, error, start.landed, start.layer)
+    end = _end(start, np.maximum(left, ripple), nodes, layer, A, U, P, z, duration, fall)
     return Piece(nodes, start, end, area_at, layer, fall, A, U, P, drive, z, density, duration, 1.0)
 
 
@@ -198,7 +194,8 @@ def by_distance(
     pull = load.gravity * length
     change = left = np.ones(cases)
     few = slice(None, None, max(1, cases // 64))
-    jacobian, to_P = np.empty(count), np.empty((count, count))
+    jacobian: Array = np.empty(count)
+    newton: Array = np.eye(count)
     for iteration in range(ITERATIONS):
         np.multiply(per_density, density, out=strength)
         np.matmul(nodes.integral, strength, out=A)
@@ -206,39 +203,57 @@ def by_distance(
         if iteration == 0:
             P[:] = _first_guess(start, U, pull * (nodes.integral @ (A * A)))
         before = _sample(PA, density)
-        np.hypot(P, U, out=H)
-        np.maximum(H, SLOWEST, out=H)
+        _speed(P, U, H, drive)
         np.multiply(A, A, out=drive)
         drive *= pull
         drive /= H
         if iteration < 3:
             jacobian = _mean(-drive[:, few] * P[:, few] / H[:, few] ** 2)
-            to_P = np.asarray(np.linalg.inv(np.eye(count) - nodes.integral * jacobian))
-        P[:] = to_P @ (start.w + nodes.integral @ (drive - jacobian[:, None] * P))
-        np.hypot(P, U, out=H)
-        np.maximum(H, SLOWEST, out=H)
-        np.matmul(nodes.integral, P / H, out=z)
+            newton = np.asarray(np.linalg.inv(np.eye(count) - nodes.integral * jacobian))
+        np.multiply(P, jacobian[:, None], out=strength)
+        np.subtract(drive, strength, out=strength)
+        np.matmul(newton @ nodes.integral, strength, out=P)
+        P += newton.sum(1, keepdims=True) * start.w
+        _speed(P, U, H, strength)
+        np.divide(P, H, out=strength)
+        np.matmul(nodes.integral, strength, out=z)
         z *= -length
         z += start.z
         if layer.slope is not None:
-            U = start.u + (layer.slope * length) * (nodes.integral @ (P * A / H))
+            strength *= A
+            U = start.u + (layer.slope * length) * (nodes.integral @ strength)
         air(z, density, strength)
         change, previous = np.abs(_sample(PA, density) / before - 1).sum(0), change
         left = _left(change, previous)
         if iteration and np.fmax.reduce(left) < CONVERGED:
             break
     pace = A / H * length
-    ripple = 0.02 * _ripple(nodes, drive, H[-1]) + 0.1 * _ripple(nodes, density, density[-1])
+    ripple = 0.02 * (_ripple(nodes, drive, H[-1]) + _ripple(nodes, pace, start.t + nodes.integral[-1] @ pace))
     np.multiply(per_density, density, out=drive)
-    drive *= A
-    ripple += 0.02 * _ripple(nodes, drive, A[-1])
-    u = U / A
-    time = nodes.integral[-1] @ pace
-    ripple += 0.02 * _ripple(nodes, pace, start.t + time)
-    x = start.x + nodes.integral[-1] @ (pace * (u + layer.at(z)))
-    error = np.maximum(start.error, np.maximum(left, ripple))
-    end = State(start.t + time, x, z[-1].copy(), u[-1], P[-1] / A[-1], error, start.landed, start.layer)
+    drive *= A                                          # now dA / dsigma
+    ripple += 0.02 * _ripple(nodes, drive, A[-1]) + 0.1 * _ripple(nodes, density, density[-1])
+    end = _end(start, np.maximum(left, ripple), nodes, layer, A, U, P, z, pace, 1.0)
     return Piece(nodes, start, end, area_at, layer, 1.0, A, U, P, drive, z, density, pace, load.gravity * pace)
+
+
+def _end(
+    start: State, error: Array, nodes: Lobatto, layer: Layer, A: Array, U: Array, P: Array, z: Array, pace: Array,
+    unit: Array | float,
+) -> State:
+    """The state at the end of a piece."""
+    u = U / A * unit
+    x = start.x + nodes.integral[-1] @ (pace * (u + layer.at(z)))
+    t = start.t + (pace if pace.ndim == 1 else nodes.integral[-1] @ pace)
+    w = P[-1] / A[-1] * unit
+    return State(t, x, z[-1].copy(), u[-1], w, np.maximum(start.error, error), start.landed, start.layer)
+
+
+def _speed(P: Array, U: Array, H: Array, scratch: Array) -> None:
+    """H = hypot(P, U), not below the slowest; far quicker than the library's, which guards against overflow."""
+    np.multiply(P, P, out=H)
+    H += np.multiply(U, U, out=scratch) if U.ndim == 2 else U * U
+    np.sqrt(H, out=H)
+    np.maximum(H, SLOWEST, out=H)
 
 
 def _first_guess(start: State, U: Array, fallen: Array) -> Array:

@@ -87,7 +87,8 @@ def features() -> Iterator[tuple[str, Drop]]:
     yield "static line, wind in layers", rows(two, static, winds=wind)
     yield "wind in layers", replace(two, winds=wind)
     yield "strong headwind shear", replace(two, winds=((0.0, -4.0), (400.0, -16.0)))
-    yield "wind that all but jumps", replace(two, winds=((0.0, 4.0), (80.0, 4.0), (80.1, 12.0), (370.0, 12.0), (370.2, 3.0)))
+    yield "wind that all but jumps", replace(
+        two, winds=((0.0, 4.0), (80.0, 4.0), (80.1, 12.0), (370.0, 12.0), (370.2, 3.0)))
     yield "constant wind", replace(two, winds=((0.0, 8.0),))
     yield "drogue and main, wind in layers, high ground", rows(
         two, DROGUE, REEFED, release_height=1500, ground_altitude=1640.0,

@@ -20,10 +20,10 @@ def test_rigs(number: int, rule: FillingRule) -> None:
     assert missed(differences(RIGS[number], rule, [0])) == {}
 
 
-@pytest.mark.parametrize("rule", RULES)
-@pytest.mark.parametrize("name", FEATURES)
-def test_features(name: str, rule: FillingRule) -> None:
-    assert missed(differences(FEATURES[name], rule, [0])) == {}
+@pytest.mark.parametrize(("number", "name"), list(enumerate(FEATURES)))
+def test_features(number: int, name: str) -> None:
+    # the rules in turn; tests/benchmarks/engine_accuracy.py runs both
+    assert missed(differences(FEATURES[name], RULES[number % 2], [0])) == {}
 
 
 @pytest.mark.parametrize(("name", "rule"), [

@@ -238,7 +238,7 @@ def drops(draw: st.DrawFn) -> Drop:
         tuple(row(number) for number in range(draw(st.integers(1, 3)))), isa, draw(some(-100, 4000)), winds)
 
 
-@settings(max_examples=40, deadline=None, derandomize=True)
+@settings(max_examples=25, deadline=None, derandomize=True)
 @given(drops(), st.sampled_from(RULES))
 def test_whatever_is_put_in(drop: Drop, rule: FillingRule) -> None:
     with warnings.catch_warnings():
