@@ -147,10 +147,12 @@ class Finding:
 
     @property
     def method(self) -> str:
-        """Name and source of the formula the value comes from."""
-        how = self.result.how if self.result else None
-        if how is None:
+        """Name and source of the formula the value comes from, or where it is given."""
+        if self.result is None:
             return ""
+        how = self.result.how
+        if how is None:
+            return f"as given: {self.result.origin}"
         return f"{how.text}; {how.source}" if how.source else how.text
 
 

@@ -9,7 +9,7 @@ from model.checks.case import Case
 from model.checks.descent import measured_cautions, rate_is_measured, vertical_at_touchdown
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
 from model.checks.step import Outcome, Step
-from model.checks.term import LESS, SAME, Procedure, Term, combine, derive, known, least, read, read_count, total
+from model.checks.term import LESS, Procedure, Term, combine, derive, known, least, read, read_count, total
 from model.physics import cushion, overturn
 from model.physics.formula import formula
 from model.physics.types import Real
@@ -73,18 +73,7 @@ class Cushioning:
     @cached_property
     def mass(self) -> Term:
         """Mass over the stacks."""
-        suspended = self.case.masses.suspended
-        platform = self.case.masses.platform
-        if self.under_load and platform is not None:
-            return combine(
-                LESS,
-                [suspended, platform],
-                "m",
-                "mass over the stack: the platform lies under it",
-                "mass",
-                suspended.unit,
-            )
-        return combine(SAME, [suspended], "m", "mass over the stack", "mass", suspended.unit)
+        return self.case.masses.over_stack(platform_under=self.under_load)
 
     @cached_property
     def weight(self) -> Term:

@@ -8,7 +8,7 @@ from functools import lru_cache
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
 from model.checks.step import Outcome, Step
-from model.checks.term import LESS, Procedure, Term, combine, derive, given, known, read_count
+from model.checks.term import Procedure, Term, combine, derive, given, known, read_count
 from model.physics import lashing
 from model.physics.lashing import Hold, Mirror
 from model.rig.parts import Lashing
@@ -100,13 +100,6 @@ class Lashings:
         return tuple(dict.fromkeys(found))
 
 
-def restrained(case: Case) -> Term:
-    """Mass that the lashings hold: all but platform and extraction parachutes."""
-    masses = case.masses
-    away = [term for term in (masses.platform, masses.extraction) if term is not None]
-    return combine(LESS, [masses.rigged, *away], "m", "mass lashed", "mass", masses.rigged.unit)
-
-
 def _direction(direction: str) -> Callable[[Case], Outcome]:
     def compute(case: Case) -> Outcome:
         lashings = case.lashings
@@ -118,7 +111,7 @@ def _direction(direction: str) -> Callable[[Case], Outcome]:
         term = known(factor.value, "a", f"restraint factor {direction}", "number", origin)
         if term.value == 0:
             raise CannotJudge(f"restraint.{direction} is 0: nothing is asked for")
-        needed_mass = restrained(case)
+        needed_mass = case.masses.lashed
         result = derive(lashing.restraint_ratio, lashings.held(direction), term, _weight(needed_mass))
         return Outcome(result, cautions=lashings.cautions())
 

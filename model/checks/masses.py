@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from functools import cached_property
 
-from model.checks.missing import Missing, need, row
+from model.checks.missing import CannotJudge, Missing, need, row
 from model.checks.term import LESS, SAME, Procedure, Term, combine, given, known, read, total
 from model.quantity import Quantity
 from model.rig.rig import Rig, along, plan_point
@@ -32,6 +32,12 @@ CENTRE_WITHOUT = Procedure(
 )
 AXES = ("x", "y", "z")
 Place = tuple[Quantity, Quantity, Quantity]
+
+
+def _over_0(mass: Term, otherwise: str) -> Term:
+    if mass.value <= 0:
+        raise CannotJudge(f"{otherwise}: check the masses")
+    return mass
 
 
 class Masses:
@@ -85,13 +91,12 @@ class Masses:
     def extraction(self) -> Term | None:
         """Mass of the extraction parachutes; None where there are none."""
         leaving = self.rig.exit
-        extraction = leaving.extraction if leaving else None
-        if leaving is None or (
-            extraction is None and (leaving.method != "extraction" or "extraction" in self.left_out)
-        ):
+        if (leaving is None or leaving.extraction is None) and self.left_out & {"exit", "extraction"}:
             return None
-        need(leaving.method, "exit.method")
-        mass = need(need(extraction, "exit.extraction").mass, "exit.extraction.mass")
+        leaving = need(leaving, "exit")
+        if need(leaving.method, "exit.method") != "extraction":
+            return None
+        mass = need(need(leaving.extraction, "exit.extraction").mass, "exit.extraction.mass")
         return given(mass, "me", "mass of the extraction parachutes", "exit.extraction.mass")
 
     @cached_property
@@ -121,13 +126,31 @@ class Masses:
         extraction = self.rig.exit.extraction if self.rig.exit else None
         if self.extraction is None or extraction is None or need(extraction.stays, "exit.extraction.stays"):
             return combine(SAME, [rigged], "m", "falling mass", "mass", rigged.unit)
-        return combine(LESS, [rigged, self.extraction], "m", "falling mass", "mass", rigged.unit)
+        falling = combine(LESS, [rigged, self.extraction], "m", "falling mass", "mass", rigged.unit)
+        return _over_0(falling, "the extraction parachute weighs as much as everything rigged")
 
     @cached_property
     def suspended(self) -> Term:
         """Suspended mass m_s: the falling mass less the canopies."""
         falling = self.falling
-        return combine(LESS, [falling, *self.canopies], "ms", "suspended mass", "mass", falling.unit)
+        suspended = combine(LESS, [falling, *self.canopies], "ms", "suspended mass", "mass", falling.unit)
+        return _over_0(suspended, "the canopies weigh as much as everything that falls")
+
+    @cached_property
+    def lashed(self) -> Term:
+        """Mass that the lashings hold: all but platform and extraction parachutes."""
+        away = [term for term in (self.platform, self.extraction) if term is not None]
+        lashed = combine(LESS, [self.rigged, *away], "m", "mass lashed", "mass", self.rigged.unit)
+        return _over_0(lashed, "the platform weighs as much as everything rigged")
+
+    def over_stack(self, *, platform_under: bool) -> Term:
+        """Mass that comes down on a stack: suspended, less the platform where that lies under it."""
+        suspended = self.suspended
+        if not platform_under or self.platform is None:
+            return combine(SAME, [suspended], "m", "mass over the stack", "mass", suspended.unit)
+        meaning = "mass over the stack: the platform lies under it"
+        over = combine(LESS, [suspended, self.platform], "m", meaning, "mass", suspended.unit)
+        return _over_0(over, "the platform weighs as much as everything suspended")
 
     def _place(self, axis: int, point: Place | None, field: str, name: str) -> Term:
         reading = need(point, field)[axis]
