@@ -96,15 +96,17 @@ def _body(report: Report) -> Iterator[str]:
 
 
 def _rig(rig: RigReport, name: str) -> Iterator[str]:
+    """A rig as a table of one column: its head comes again on each page, and a row a block lets pages part it."""
     yield f'<section class="rig" aria-labelledby="{name}">\n<table class="page" role="presentation">'
     head = "<br>".join(_t(part) for part in rig.page_head)
-    yield f"<thead><tr><td>{head}</td></tr></thead>\n<tbody><tr><td>"
-    yield f'<h2 id="{name}">{_t(rig.title)}</h2>'
-    yield from _blocks(rig.first, name, "h3")
-    for section in rig.sections:
-        yield f"<h3>{_t(section.title)}</h3>"
-        yield from _blocks(section.blocks, name, "h4")
-    yield "</td></tr></tbody>\n</table>\n</section>"
+    yield f"<thead><tr><td>{head}</td></tr></thead>\n<tbody>"
+    parts: list[tuple[str, Sequence[Block], str]] = [(f'<h2 id="{name}">{_t(rig.title)}</h2>', rig.first, "h3")]
+    parts += [(f"<h3>{_t(section.title)}</h3>", section.blocks, "h4") for section in rig.sections]
+    for number, (title, blocks, below) in enumerate(parts):
+        for block in _blocks(blocks, f"{name}-{number}", below):
+            yield f"<tr><td>{title}{block}</td></tr>"
+            title = ""  # noqa: PLW2901
+    yield "</tbody>\n</table>\n</section>"
 
 
 def _blocks(blocks: Sequence[Block], rig: str, heading: str) -> Iterator[str]:
