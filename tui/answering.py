@@ -105,3 +105,7 @@ class RepeatGuard:
         last = self._last.get(key)
         self._last[key] = moment
         return last is not None and moment - last < REPEAT
+
+    def forget(self) -> None:
+        """Forget all keys: text was typed since, so the next key is pressed anew."""
+        self._last.clear()

@@ -138,6 +138,10 @@ class RigslateApp(App[int], inherit_bindings=False):
         """Note whether a key repeats by itself, before its command runs."""
         self.repeated = self._guard.repeats(event.key, self._moment(event))
 
+    def text_typed(self) -> None:
+        """Text was typed into a field, so the next key is no repeat of one before it."""
+        self._guard.forget()
+
     # -- rigs
 
     def check(self, rigs: Iterable[Path]) -> None:

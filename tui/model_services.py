@@ -1,10 +1,9 @@
 """The model, asked by the screens' workers. Each import happens when it is first needed, off the screen's thread."""
 
-# ruff: noqa: PLC0415  the imports stand where they are first needed
+
 
 from __future__ import annotations
 
-import tomllib
 from datetime import datetime
 from pathlib import Path
 from typing import TYPE_CHECKING, Literal
@@ -48,6 +47,8 @@ class ModelServices:
 
     def inputs(self, rig: Path) -> tuple[Path, ...]:
         """The rig file, its record and its limit set."""
+        import tomllib
+
         from model.rig.record import record_path
 
         files = [rig, record_path(rig)]

@@ -75,3 +75,10 @@ def test_a_held_key_stays_a_repeat_however_long_it_is_held() -> None:
     guard = RepeatGuard()
     guard.repeats("enter", 0.0)
     assert all(guard.repeats("enter", 0.03 * count) for count in range(1, 200))
+
+
+def test_text_typed_in_between_makes_the_next_key_a_new_one() -> None:
+    guard = RepeatGuard()
+    guard.repeats("enter", 1.0)
+    guard.forget()
+    assert not guard.repeats("enter", 1.1)

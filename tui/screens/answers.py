@@ -59,7 +59,7 @@ class AnswerScreen(BaseScreen):
 
     def below(self) -> Iterator[Widget]:
         """The field of an answer."""
-        with Horizontal(id="field-line", classes="-hidden"):
+        with Horizontal(id="field-line"):
             yield Page(id="asked")
             yield Input(compact=True, select_on_focus=False, id="field")
 
@@ -116,8 +116,7 @@ class AnswerScreen(BaseScreen):
 
     def _draw_field(self, cells: int) -> None:
         asking = self._asking
-        line = self.query_one("#field-line")
-        line.set_class(asking is None, "-hidden")
+        self.query_one("#field-line").display = asking is not None
         if asking is not None and self._draft is not None:
             question = self.chars.clean(self._draft.question(asking))
             rows = paragraph(f" {question}: ", cells // 2 + 4, "key")
@@ -166,9 +165,15 @@ class AnswerScreen(BaseScreen):
         field.max_length = LONGEST[name]
         self._field_open = True
         self._pane = 3
-        self.query_one("#field-line").remove_class("-hidden")
-        field.focus()
+        # Shown and focused at once, so that no letter typed next is taken for a command.
+        self.query_one("#field-line").display = True
+        self.set_focus(field)
         self.draw()
+
+    def on_input_changed(self, event: Input.Changed) -> None:
+        """Text between two presses of Enter makes the second one meant."""
+        if event.value:
+            self.slate.text_typed()
 
     def on_input_submitted(self, event: Input.Submitted) -> None:
         """Take what was typed into a field."""
@@ -211,7 +216,7 @@ class AnswerScreen(BaseScreen):
     def _close_field(self) -> None:
         self._field_open = False
         self.set_focus(None)
-        self.query_one("#field-line").add_class("-hidden")
+        self.query_one("#field-line").display = False
 
     def _drop_draft(self) -> None:
         self._close_field()

@@ -244,7 +244,7 @@ class StepsScreen(AnswerScreen):
         self.hush()
         field = self.query_one(Input)
         if number == 3 and self._asking is not None:
-            field.focus()
+            self.set_focus(field)
         else:
             self.set_focus(None)
         self.draw()

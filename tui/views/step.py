@@ -23,6 +23,8 @@ if TYPE_CHECKING:
     from model.quantity import UnitSystem
 
 _WIDEST_BAR = 54
+_MOST_INPUTS = 6
+"""Inputs named below a formula; a sum of many parts is left to the working."""
 
 
 def head(checklist: Checklist, here: int, *, under_way: bool, cells: int, chars: Charset) -> list[Row]:
@@ -159,7 +161,10 @@ def _because(finding: Finding, system: UnitSystem, cells: int, chars: Charset) -
     lines = [term.how.text]
     if isinstance(term.how, Formula):
         lines.append(f"= {with_numbers(term.how, term, system)}")
-    lines += [f"{one.symbol} = {term_value(one, system)}, {one.meaning}" for one in term.inputs]
+    shown = term.inputs if len(term.inputs) <= _MOST_INPUTS + 1 else term.inputs[:_MOST_INPUTS]
+    lines += [f"{one.symbol} = {term_value(one, system)}, {one.meaning}" for one in shown]
+    if len(shown) < len(term.inputs):
+        lines.append(f"and {len(term.inputs) - len(shown)} more, all in the working")
     lines += [f"source: {term.how.source}"] if term.how.source else []
     lines += [f"leaves out: {term.how.leaves_out}"] if term.how.leaves_out else []
     rows: list[Row] = [EMPTY, row(Span("Because", "title"))]
@@ -218,7 +223,8 @@ def working_rows(lines: Sequence[str], cells: int, chars: Charset) -> list[Row]:
     for line in lines:
         text = line.lstrip()
         blanks = min(len(line) - len(text), max(cells // 3, 1))
-        wrapped = wrap(chars.clean(text), cells - blanks, "  ") if text else [""]
+        cleaned = chars.clean(text)
+        wrapped = [cleaned] if width(cleaned) + blanks <= cells else wrap(cleaned, cells - blanks, "  ")
         rows += [row(" " * blanks + part) for part in wrapped]
     return rows
 
