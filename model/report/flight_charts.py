@@ -114,7 +114,8 @@ class _Drawing:
         limits = self._force_bounds()
         bounds = [Bound(shown(force), label) for force, label in limits]
         text = _apart(peak, [force for force, _ in limits], Dimension.FORCE, unit)
-        mark = Mark(moment, shown(peak), f"peak {text} at {moment:.2f} s")
+        never = "no canopy pulls before the load lands"
+        mark = Mark(moment, shown(peak), f"peak {text} at {moment:.2f} s" if isfinite(moment) else never)
         curves = self._curves(
             self._opening(lambda flight: flight.time),
             self._opening(lambda flight: _converted(flight.canopy_force, unit, Dimension.FORCE)),

@@ -9,7 +9,7 @@ import pytest
 
 from model.checks.case import Case
 from model.checks.checklist import check
-from model.checks.finding import Verdict
+from model.checks.finding import Checklist, Verdict
 from model.quantity import Dimension, UnitSystem, parse
 from model.report.chart import Bound, Chart
 from model.report.flight_charts import case_history, flight_charts
@@ -126,13 +126,24 @@ def test_missing_data_are_named_in_place_of_curves() -> None:
     assert found.reason.startswith("data missing: ")
 
 
-def test_a_load_that_lands_before_it_is_open_still_has_curves_and_no_strength_line(tmp_path: Path) -> None:
-    (tmp_path / "limits").mkdir()
+def released_at(folder: Path, height: str) -> Checklist:
+    """The pump released at another height."""
+    (folder / "limits").mkdir()
     limits = (RIGS / "limits" / "tarn-low.toml").read_text(encoding="utf-8")
-    (tmp_path / "limits" / "tarn-low.toml").write_text(limits, encoding="utf-8")
-    rig = tmp_path / "low.toml"
-    rig.write_text(PUMP.read_text(encoding="utf-8").replace("1,250 ft ± 50 ft", "60 ft"), encoding="utf-8")
-    checklist = check(rig)
+    (folder / "limits" / "tarn-low.toml").write_text(limits, encoding="utf-8")
+    rig = folder / "low.toml"
+    rig.write_text(PUMP.read_text(encoding="utf-8").replace("1,250 ft ± 50 ft", height), encoding="utf-8")
+    return check(rig)
+
+
+def test_a_load_that_lands_before_line_stretch_has_no_peak_and_says_so(tmp_path: Path) -> None:
+    force = flight_charts(released_at(tmp_path, "20 ft"), UnitSystem.WRITTEN).charts[0]
+    assert force.chart.drawable_marks() == []
+    assert force.said[0] == "time rule: no canopy pulls before the load lands"
+
+
+def test_a_load_that_lands_before_it_is_open_still_has_curves_and_no_strength_line(tmp_path: Path) -> None:
+    checklist = released_at(tmp_path, "60 ft")
     assert next(one for one in checklist.findings if one.key == "opening.canopy").verdict is Verdict.FAIL
     found = flight_charts(checklist, UnitSystem.WRITTEN)
     assert len(found.charts) == 3
