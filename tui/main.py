@@ -7,8 +7,6 @@ import sys
 from collections.abc import Sequence
 from contextlib import suppress
 
-from tui.command_line.arguments import COMMANDS, parse
-
 UNREADABLE, INTERRUPTED, PIPE_CLOSED = 2, 130, 141
 
 
@@ -20,8 +18,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
     _plain_streams()
     try:
         status = _run(words)
-        if sys.stdout is not None:
-            sys.stdout.flush()
+        sys.stdout.flush()
     except KeyboardInterrupt:
         return INTERRUPTED
     except BrokenPipeError:
@@ -41,6 +38,9 @@ def _drop_output() -> None:
 
 
 def _run(words: list[str]) -> int:
+    # Within reach of the handlers of `main`, so that an interrupt while modules load ends quietly too.
+    from tui.command_line.arguments import COMMANDS, parse
+
     if words and words[0] in COMMANDS:
         options = parse(words)
         module = __import__(f"tui.command_line.{options.command}", fromlist=["run"])
@@ -52,7 +52,11 @@ def _run(words: list[str]) -> int:
 
 
 def _plain_streams() -> None:
-    """A console that lacks a character shows a mark in its place instead of ending the program."""
+    """A console that lacks a character shows a mark in its place; an output that is closed takes everything."""
+    if sys.stdout is None:
+        sys.stdout = open(os.devnull, "w", encoding="utf-8")  # noqa: SIM115
+    if sys.stderr is None:
+        sys.stderr = open(os.devnull, "w", encoding="utf-8")  # noqa: SIM115
     for stream in (sys.stdout, sys.stderr):
         reconfigure = getattr(stream, "reconfigure", None)
         if reconfigure is not None:

@@ -8,9 +8,9 @@ from pathlib import Path
 
 from model.checks import inspected, registry
 from model.checks.case import Case
-from model.checks.finding import STEP_UNITS, Checklist, Finding, Limit, Signature, Verdict
+from model.checks.finding import Checklist, Finding, Limit, Signature, Verdict
 from model.checks.inputs import verify
-from model.checks.step import Ruling, Step, judge
+from model.checks.step import Ruling, Step, bound_in_unit, judge
 from model.rig import digest, record
 from model.rig.entry import Entry
 from model.rig.errors import InputError, InputProblem
@@ -114,9 +114,8 @@ def _rulings(loaded: Loaded) -> Mapping[str, Ruling]:
 
 
 def _ruling(key: str, bounds: Bounds) -> Ruling:
-    size = STEP_UNITS[registry.unit_of(key) or "1"].size
-    low = bounds.low.value / size if bounds.low else None
-    high = bounds.high.value / size if bounds.high else None
+    unit = registry.unit_of(key) or "1"
+    low, high = (bound_in_unit(one.value, unit) if one else None for one in (bounds.low, bounds.high))
     written = bounds.high or bounds.low
     limit = Limit(low, high, bounds.source, written.unit) if written else None
     return Ruling(limit, bounds.judged, bounds.needs_measured, bounds.source)

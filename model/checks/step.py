@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field, replace
-from math import isfinite
+from math import isfinite, ulp
 
 from model.checks.case import Case
 from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Verdict
@@ -87,11 +87,19 @@ def value_in_unit(value: float, dimension: str, unit: str) -> float:
     return value / known.size if dimension == known.dimension else value
 
 
+def bound_in_unit(value: float, unit: str) -> float:
+    """A bound in SI in a step's unit: the short number that was written, where it differs by rounding alone."""
+    size = STEP_UNITS[unit].size
+    exact = value / size
+    written = float(f"{exact:.14g}")
+    return written if abs(written - exact) <= 2 * ulp(exact) else exact
+
+
 def own_limit(unit: str, least: Quantity | None = None, most: Quantity | None = None) -> Limit:
     """A limit written in the rig file."""
-    size = STEP_UNITS[unit].size
     shown = (most or least).unit if (most or least) else None  # type: ignore[union-attr]
-    return Limit(least.value / size if least else None, most.value / size if most else None, "rig file", shown)
+    low, high = (bound_in_unit(one.value, unit) if one else None for one in (least, most))
+    return Limit(low, high, "rig file", shown)
 
 
 def tighter(limits: list[Limit]) -> Limit | None:

@@ -163,3 +163,19 @@ def test_without_a_limit_set_nothing_of_it_passes_and_that_is_said(tmp_path: Pat
     assert found.verdict is Verdict.OPEN
     assert found.limit_set == ""
     assert any("no limit set" in note for note in found.notes)
+
+
+@pytest.mark.parametrize(("text", "key", "bound"), [
+    ("20 g", "opening.load_factor", 20.0), ("9 g", "opening.load_factor", 9.0), ("40 deg", "suspension.tilt", 40.0),
+    ("7 deg", "suspension.tilt", 7.0), ("120 d", "service.repack", 120.0), ("12 yr", "service.age", 12.0),
+])  # fmt: skip
+def test_a_bound_in_the_unit_of_its_step_is_the_number_that_was_written(
+    tmp_path: Path, text: str, key: str, bound: float
+) -> None:
+    def limit(raw: Raw) -> None:
+        raw["limits"][key] = {"max": text, "source": "rule"}
+
+    found = findings(tmp_path, limits=limit)
+    limits = [one.limit for one in found.values() if one.key.startswith(key)]
+    assert limits
+    assert all(one is not None and one.maximum == bound for one in limits)
