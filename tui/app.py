@@ -20,9 +20,9 @@ from tui.commands import Keys
 from tui.glyphs import Charset, charset
 from tui.jobs import JobBook
 from tui.keymap import KeymapError, keymap_path, read_keys
-from tui.messages import Checked, FilesChanged, Remedied, RigsFound, Worked, Written
+from tui.messages import Checked, FilesChanged, Remedied, RigsFound, RigsGlanced, Worked, Written
 from tui.screens.base import BaseScreen
-from tui.services import Services
+from tui.services import Found, Services
 from tui.shelf import Shelf
 from tui.tones import DARK_GROUND, LIGHT_GROUND, Look, look
 from tui.workers import Workers
@@ -100,10 +100,10 @@ class RigslateApp(App[int], inherit_bindings=False):
     def get_default_screen(self) -> Screen[Any]:
         """The shelf, or the checklist where one rig was asked for."""
         if self._only is None:
-            from tui.screens.rigs import RigsScreen  # noqa: PLC0415  (only one of the two is needed at first)
+            from tui.screens.rigs import RigsScreen
 
             return RigsScreen()
-        from tui.screens.steps import StepsScreen  # noqa: PLC0415
+        from tui.screens.steps import StepsScreen
 
         return StepsScreen(self._only)
 
@@ -120,7 +120,7 @@ class RigslateApp(App[int], inherit_bindings=False):
         self.call_after_refresh(self._begin)
 
     def _begin(self) -> None:
-        self._tasks.find(self._only or self.root)
+        self._tasks.find(self._only or self.root, glance=True)
         if self._watch is not None:
             self.set_interval(self._watch, self._look_at_files)
 
@@ -153,6 +153,14 @@ class RigslateApp(App[int], inherit_bindings=False):
                 screen.rig_changed(rig)
         if start:
             self._tasks.check()
+
+    def on_rigs_glanced(self, message: RigsGlanced) -> None:
+        """Show rows at once; what the folder really holds follows."""
+        if not self.shelf.entries:
+            new, _ = self.shelf.take_in(Found(message.rigs))
+            self.check(new)
+            for screen in self._screens():
+                screen.shelf_changed()
 
     def on_rigs_found(self, message: RigsFound) -> None:
         """Take in what lies in the folder."""
@@ -196,7 +204,7 @@ class RigslateApp(App[int], inherit_bindings=False):
 
     def open_rig(self, rig: Path, *, instead: bool = False) -> None:
         """Show a rig's checklist, in place of the screen in front if asked."""
-        from tui.screens.steps import StepsScreen  # noqa: PLC0415
+        from tui.screens.steps import StepsScreen
 
         self.book.prefer([rig])
         if instead:
@@ -246,14 +254,14 @@ class RigslateApp(App[int], inherit_bindings=False):
     def system(self) -> UnitSystem:
         """The unit system picked."""
         if self._system is None:
-            from model.quantity import UnitSystem  # noqa: PLC0415  (not needed for the first screen)
+            from model.quantity import UnitSystem
 
             self._system = UnitSystem.WRITTEN
         return self._system
 
     def next_units(self) -> None:
         """Go on to the next unit system."""
-        from tui.views.numbers import SYSTEM_NAMES, next_system  # noqa: PLC0415
+        from tui.views.numbers import SYSTEM_NAMES, next_system
 
         self._system = next_system(self.system)
         for screen in self._screens():
@@ -300,7 +308,7 @@ def run(path: Path, environment: Mapping[str, str] | None = None) -> int:
         keys = read_keys(keymap_path(environment, Path.home()))
     except (KeymapError, RuntimeError) as error:
         greeting = str(error)
-    from tui.model_services import ModelServices  # noqa: PLC0415  (the full screen can be tested without the model)
+    from tui.model_services import ModelServices
 
     app = RigslateApp(
         path,

@@ -17,6 +17,13 @@ if TYPE_CHECKING:
 
 
 @dataclass
+class RigsGlanced(Message):
+    """What look like rigs, before the folder is read in earnest."""
+
+    rigs: tuple[Path, ...]
+
+
+@dataclass
 class RigsFound(Message):
     """What lies in the folder, or why nothing could be found."""
 

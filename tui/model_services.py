@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Literal
 
 from tui.answering import Draft
-from tui.services import CannotReadError, Found, NotWrittenError, Remedy
+from tui.services import CannotReadError, Found, NotWrittenError, Remedy, looks_like_rigs
 
 if TYPE_CHECKING:
     from model.checks.finding import Checklist, Finding
@@ -44,6 +44,10 @@ class ModelServices:
         if not found.rigs and len(unread) == len(by_file):
             raise CannotReadError([str(problem) for problem in found.problems])
         return Found(found.rigs, tuple((file, "; ".join(texts)) for file, texts in by_file.items()))
+
+    def glance(self, folder: Path) -> tuple[Path, ...]:
+        """What look like rigs below a folder."""
+        return looks_like_rigs(folder)
 
     def inputs(self, rig: Path) -> tuple[Path, ...]:
         """The rig file, its record and its limit set."""

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from datetime import datetime
@@ -56,6 +57,9 @@ class Services(Protocol):
             CannotReadError: If there is none.
         """
 
+    def glance(self, folder: Path) -> tuple[Path, ...]:
+        """What look like rigs below a folder, found in a moment; `find` has the last word."""
+
     def inputs(self, rig: Path) -> tuple[Path, ...]:
         """The files a rig's checklist is made from."""
 
@@ -105,3 +109,22 @@ def folders(root: Path) -> Iterator[Path]:
     for place, below, _ in os.walk(root, followlinks=False):
         below[:] = [name for name in below if not name.startswith(".")]
         yield Path(place)
+
+
+_RIG_TABLE = re.compile(rb"^[ \t]*\[[ \t]*rig[ \t]*\]", re.MULTILINE)
+_LARGEST = 2_000_000
+
+
+def looks_like_rigs(folder: Path) -> tuple[Path, ...]:
+    """The files below a folder that hold a rig table, by a look at their text alone, sorted."""
+    found = []
+    for place in folders(folder):
+        for path in place.glob("*.toml"):
+            if path.name.startswith(".") or path.name.endswith(".record.toml"):
+                continue
+            try:
+                if path.stat().st_size <= _LARGEST and path.is_file() and _RIG_TABLE.search(path.read_bytes()):
+                    found.append(path)
+            except OSError:
+                continue
+    return tuple(sorted(found))

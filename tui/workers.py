@@ -11,7 +11,7 @@ from textual.worker import get_current_worker
 
 from tui.answering import Draft
 from tui.jobs import JobBook
-from tui.messages import Checked, FilesChanged, Remedied, RigsFound, Worked, Written
+from tui.messages import Checked, FilesChanged, Remedied, RigsFound, RigsGlanced, Worked, Written
 from tui.services import CannotReadError, NotWrittenError, Services, Stamp, folders, stamp, stamps
 
 if TYPE_CHECKING:
@@ -46,10 +46,12 @@ class Workers:
     def _start(self, work: Callable[[], None], group: str) -> None:
         self._app.run_worker(work, thread=True, group=group, exit_on_error=False)
 
-    def find(self, path: Path) -> None:
-        """Look for rigs."""
+    def find(self, path: Path, *, glance: bool = False) -> None:
+        """Look for rigs; with a quick glance first where nothing is shown yet."""
 
         def work() -> None:
+            if glance and path.is_dir():
+                self._app.post_message(RigsGlanced(self._services.glance(path)))
             # Stamped before the look, so that what changes meanwhile is seen the next time.
             stamped = stamps(list(folders(path))) if path.is_dir() else ()
             try:

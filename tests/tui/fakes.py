@@ -109,6 +109,10 @@ class FakeServices:
             raise CannotReadError([f"{path}: no rig file here"])
         return Found(rigs, tuple(self.unread.items()))
 
+    def glance(self, folder: Path) -> tuple[Path, ...]:
+        """All rigs that can be read."""
+        return tuple(sorted(self.checklists))
+
     def inputs(self, rig: Path) -> tuple[Path, ...]:
         """The rig file alone."""
         return (rig,)

@@ -3,7 +3,7 @@
 from pathlib import Path
 
 from tests.tui.fakes import checklist
-from tui.services import Found, folders, stamp
+from tui.services import Found, folders, looks_like_rigs, stamp
 from tui.shelf import CANNOT_READ, Shelf
 
 ROOT = Path("/rigs")
@@ -78,3 +78,15 @@ def test_hidden_and_linked_folders_are_passed_over(tmp_path: Path) -> None:
         (tmp_path / name).mkdir()
     (tmp_path / "link").symlink_to(tmp_path / "one")
     assert {path.relative_to(tmp_path).as_posix() for path in folders(tmp_path)} == {".", "one", "one/two"}
+
+
+def test_a_glance_takes_files_with_a_rig_table_alone(tmp_path: Path) -> None:
+    texts = {
+        "a.toml": "format = 1\n[rig]\n", "set.toml": "[set]\n# [rig]\n", ".hidden.toml": "[rig]\n",
+        "x.record.toml": "[rig]\n", "sub/b.toml": "[ rig ]\n", "c.txt": "[rig]\n",
+    }  # fmt: skip
+    (tmp_path / "sub").mkdir()
+    for name, content in texts.items():
+        (tmp_path / name).write_text(content)
+    (tmp_path / "d.toml").mkdir()
+    assert [path.relative_to(tmp_path).as_posix() for path in looks_like_rigs(tmp_path)] == ["a.toml", "sub/b.toml"]
