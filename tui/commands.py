@@ -6,9 +6,13 @@ from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
 RIGS, STEPS, WORKING, HELP, PALETTE = "rigs", "steps", "working", "help", "palette"
-READING = (RIGS, STEPS, WORKING)
+OPENING, LOAD_PATH = "opening", "load path"
+READING = (RIGS, STEPS, WORKING, LOAD_PATH, OPENING)
 """Screens that show a rig or rigs."""
 ALL = (*READING, HELP)
+LINES = (WORKING, LOAD_PATH, HELP)
+"""Screens that are one page of lines."""
+PAGED = (RIGS, STEPS, *LINES)
 
 FORBIDDEN = frozenset({
     "ctrl+i", "ctrl+m", "ctrl+h", "ctrl+j", "ctrl+left_square_bracket", "ctrl+b", "ctrl+a", "ctrl+z", "ctrl+backslash",
@@ -69,13 +73,44 @@ COMMANDS: tuple[Command, ...] = (
             (STEPS,), "Answers", "initials"),
     Command("steps.working", ("w",), "Working", "Shows the lines that lead to the number.",
             (STEPS,), "Steps", "working", 3, "working"),
-    Command("page.down", ("pagedown", "space"), "Page down", "Shows the lines below.", ALL, "Moving", "page(1)"),
-    Command("page.up", ("pageup",), "Page up", "Shows the lines above.", ALL, "Moving", "page(-1)"),
-    Command("page.first", ("home",), "First", "Goes to the first rig, step or line.", ALL, "Moving", "edge(-1)"),
-    Command("page.last", ("end",), "Last", "Goes to the last rig, step or line.", ALL, "Moving", "edge(1)"),
-    Command("lines.up", ("up",), "Line up", "Shows one line more above.", (WORKING, HELP), "Moving", "line(-1)", 2,
+    Command("steps.opening", ("o",), "Opening", "Goes through the opening line by line, with its curve and with inputs"
+            " that keys move.", (STEPS,), "Steps", "opening", 3, "opening"),
+    Command("steps.load_path", ("h",), "Load path", "Shows what hangs on what: every part with its load, strength and"
+            " factor, the weakest marked.", (STEPS,), "Steps", "load_path"),
+    Command("opening.next", ("space", "enter"), "Next line", "Opens the next line.",
+            (OPENING,), "Opening", "next_line(1)", 1, "next line"),
+    Command("opening.previous", ("backspace",), "Line before", "Opens the line before.",
+            (OPENING,), "Opening", "next_line(-1)"),
+    Command("opening.first", ("home",), "First line", "Opens the first line.", (OPENING,), "Opening", "edge(-1)"),
+    Command("opening.last", ("end",), "Last line", "Opens the last line.", (OPENING,), "Opening", "edge(1)"),
+    Command("opening.page_down", ("pagedown",), "Page down", "Shows the lines below.",
+            (OPENING,), "Opening", "page(1)"),
+    Command("opening.page_up", ("pageup",), "Page up", "Shows the lines above.", (OPENING,), "Opening", "page(-1)"),
+    Command("opening.input_above", ("up", "shift+tab"), "Input above", "Chooses the input above.",
+            (OPENING,), "Opening", "choose(-1)", 2, "input"),
+    Command("opening.input_below", ("down", "tab"), "Input below", "Chooses the input below.",
+            (OPENING,), "Opening", "choose(1)", 2, "input"),
+    Command("opening.less", ("left",), "Less", "Moves the chosen input down by a step.",
+            (OPENING,), "Opening", "change(-1)", 3, "change"),
+    Command("opening.more", ("right",), "More", "Moves the chosen input up by a step.",
+            (OPENING,), "Opening", "change(1)", 3, "change"),
+    Command("opening.big", ("m",), "Bigger steps", "Switches between plain steps and steps ten times as big.",
+            (OPENING,), "Opening", "big"),
+    Command("opening.put_back", ("0",), "Put all back", "Puts all moved inputs back to the values of the file.",
+            (OPENING,), "Opening", "put_back", 6, "put back"),
+    Command("opening.width", ("z",), "Whole width", "Gives the curve the whole width, or takes it back.",
+            (OPENING,), "Opening", "whole_width", 4, "curve wide"),
+    Command("opening.plot", ("g",), "Next curve", "Shows force against time, rate of descent against height and drag"
+            " area against time, in turn.", (OPENING,), "Opening", "plot", 5, "curve"),
+    Command("opening.keep", ("k",), "Keep as a new file", "Writes the rig with its moved inputs to a new rig file; no"
+            " file is ever written over.", (OPENING,), "Opening", "keep"),
+    Command("page.down", ("pagedown", "space"), "Page down", "Shows the lines below.", PAGED, "Moving", "page(1)"),
+    Command("page.up", ("pageup",), "Page up", "Shows the lines above.", PAGED, "Moving", "page(-1)"),
+    Command("page.first", ("home",), "First", "Goes to the first rig, step or line.", PAGED, "Moving", "edge(-1)"),
+    Command("page.last", ("end",), "Last", "Goes to the last rig, step or line.", PAGED, "Moving", "edge(1)"),
+    Command("lines.up", ("up",), "Line up", "Shows one line more above.", LINES, "Moving", "line(-1)", 2,
             "move"),
-    Command("lines.down", ("down",), "Line down", "Shows one line more below.", (WORKING, HELP), "Moving", "line(1)", 2,
+    Command("lines.down", ("down",), "Line down", "Shows one line more below.", LINES, "Moving", "line(1)", 2,
             "move"),
     Command("pane.next", ("tab",), "Next pane", "Goes to the next pane; the marked pane takes the arrows.",
             (RIGS, STEPS), "Moving", "next_pane(1)"),

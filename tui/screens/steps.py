@@ -14,15 +14,15 @@ from tui import stepping
 from tui.commands import STEPS
 from tui.messages import Remedied
 from tui.rows import EMPTY, Row, Rows, Span, paragraph, row
-from tui.screens.answers import AnswerScreen
 from tui.screens.base import bindings
+from tui.screens.behind import BehindScreen
 from tui.views.panes import pane_rule
 from tui.widgets.page import Page
 
 if TYPE_CHECKING:
     from model.checks.finding import Finding
 
-class StepsScreen(AnswerScreen):
+class StepsScreen(BehindScreen):
     """Steps of one rig, gone through one by one; inspected steps are answered here."""
 
     BINDINGS = bindings(STEPS)
@@ -273,17 +273,3 @@ class StepsScreen(AnswerScreen):
             self.say(f"{found.name} can't be read: {self.slate.shelf.entries[found].problems[0]}")
         else:
             self.slate.open_rig(found, instead=True)
-
-    def action_working(self) -> None:
-        """Show the working of the step."""
-        finding = self.finding
-        if finding is None or self.under_way:
-            self.say("Still calculating." if self.under_way else "There is no step.")
-        elif finding.inspection is not None:
-            self.say("An inspected step has no working; somebody looks.")
-        elif finding.result is None:
-            self.say(f"There is no number to work out: {finding.reason or 'no value'}.")
-        else:
-            from tui.screens.working import WorkingScreen
-
-            self.slate.push_screen(WorkingScreen(self.rig, finding.key))

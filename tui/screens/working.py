@@ -3,12 +3,16 @@
 from __future__ import annotations
 
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from tui.commands import WORKING
 from tui.messages import Worked
 from tui.rows import Row, Rows, Span, ends, row
 from tui.screens.base import bindings
 from tui.screens.text import TextScreen
+
+if TYPE_CHECKING:
+    from model.checks.finding import Finding
 
 
 class WorkingScreen(TextScreen):
@@ -33,17 +37,21 @@ class WorkingScreen(TextScreen):
     def _ask(self) -> None:
         """Have the lines made for what the rig is now."""
         self._lines = ()
-        entry = self.slate.shelf.entries.get(self._rig)
         self._note = "calculating"
+        self._request += 1
         if self.slate.book.under_way(self._rig):
             return
-        checklist = entry.checklist if entry is not None else None
-        finding = next((one for one in checklist.findings if one.key == self._key), None) if checklist else None
+        finding = self._finding
         if finding is None or finding.result is None:
             self._note = "there is no number to work out now"
             return
-        self._request += 1
         self.slate.ask_working(self._request, finding)
+
+    @property
+    def _finding(self) -> Finding | None:
+        entry = self.slate.shelf.entries.get(self._rig)
+        checklist = entry.checklist if entry is not None else None
+        return next((one for one in checklist.findings if one.key == self._key), None) if checklist else None
 
     def worked(self, message: Worked) -> None:
         """Show the lines, if they are the latest asked for."""
@@ -68,8 +76,12 @@ class WorkingScreen(TextScreen):
 
     def text_rows(self, cells: int) -> Rows:
         """The lines."""
-        from tui.views.step import working_rows
+        from tui.views.working import result_rows, working_rows
 
-        if not self._lines:
+        finding = self._finding
+        if finding is None or self.slate.book.under_way(self._rig):
             return [row(Span(self._note, "note"))]
-        return working_rows(self._lines, cells, self.chars)
+        head = result_rows(finding, self.slate.system, cells, self.chars)
+        if not self._lines:
+            return [*head, row(Span(self._note, "note"))]
+        return [*head, *working_rows(self._lines, cells, self.chars)]
