@@ -74,10 +74,11 @@ def glide(
     way = depth * (nodes.integral @ ((layer.at(z) + across) / steady))
     x = start.x + way + slide * steady[0] / g * faded - saved * layer.at(start.z)
     w, u = steady + (rush - mixed) * left + mixed * (1 - faded), across + slide * (1 - faded)
+    w -= g / 2 * (slide / steady[0]) ** 2 * plain_time * left
     error = np.abs(square / before - 1).max(0) + np.abs(nodes.last @ (1 / steady)).sum(0) * steady[-1]
     small = np.abs(slide) / steady[0]
     neglected = (rush / steady[0]) ** 2 + small**4 + small**2 * np.abs(across[0]) / steady[0]
-    error += neglected * steady[0] / (g * t[-1])
+    error += neglected * steady[0] / (g * t[-1]) + 0.1 * neglected * left[-1]      # in time, and in speed at the end
     pressure = 0.5 * density * (u * u + w * w)
     end = State(t[-1], x[-1], z[-1], u[-1], w[-1], start.error, start.landed, start.layer)
     early = t[-1] > until

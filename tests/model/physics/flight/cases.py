@@ -31,10 +31,13 @@ REEFED = Row(
 
 
 def cloud(drop: Drop, size: int, seed: int, spread: float = 0.05) -> Drop:
-    """The drop with every number but heights of release and ground scattered uniformly by so much."""
+    """The drop with every number scattered uniformly by so much, but the heights of release, ground and wind."""
     draw = np.random.default_rng(seed)
     scattered = change_values(drop, lambda v: v * (1 + spread * draw.uniform(-1, 1, size)))
-    return replace(scattered, release_height=drop.release_height, ground_altitude=drop.ground_altitude)
+    winds = tuple((height, wind) for (height, _), (_, wind) in zip(drop.winds, scattered.winds, strict=True))
+    return replace(
+        scattered, release_height=drop.release_height, ground_altitude=drop.ground_altitude, winds=winds
+    )
 
 
 def torture(exponent: float, size: int, seed: int) -> Drop:
