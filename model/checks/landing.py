@@ -83,7 +83,7 @@ class Cushioning:
     @cached_property
     def net(self) -> Term:
         """Net deceleration in g0."""
-        return derive(cushion.net_deceleration, self.force, self.weight)
+        return derive(cushion.net_deceleration, self.force, self.weight, unit="g")
 
     @cached_property
     def speed(self) -> Term:

@@ -24,7 +24,7 @@ def load_factor(force: Real, mass: Real) -> Real:
 
 
 def _load_factor(case: Case) -> Outcome:
-    result = derive(load_factor, case.forces.opening, case.masses.falling)
+    result = derive(load_factor, case.forces.opening, case.masses.falling, unit="g")
     return _outcome(case, result)
 
 

@@ -104,6 +104,8 @@ def _carried(inputs: Sequence[Term]) -> tuple[str, ...]:
 
 def _like(inputs: Sequence[Term], dimension: str, value: float) -> str | None:
     """The unit to show a derived term in: that of an input of its kind, else one of the system the inputs stand in."""
+    if dimension == Dimension.NUMBER:
+        return None
     units = [(term.dimension, term.unit) for term in inputs if term.unit]
     for kind, unit in units:
         if kind == dimension:

@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from model.checks.finding import Checklist, Finding, Kind
 from model.checks.term import lines
 from model.quantity import UnitSystem
-from model.report.working import Line, working
+from model.report.working import Line, origin_text, working
 
 
 @dataclass(frozen=True)
@@ -70,7 +70,7 @@ def _worked(line: Line) -> WorkedLine:
 def _way(line: Line) -> Iterator[str]:
     """How a line of a working came about, in words."""
     if line.origin:
-        yield "by definition" if line.origin == "definition" else f"from {line.origin}"
+        yield origin_text(line)
     if line.formula:
         yield line.formula
     if line.numbers:

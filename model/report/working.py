@@ -51,6 +51,8 @@ class Line:
 
 def term_value(term: Term, system: UnitSystem) -> str:
     """A term's value in words, in the chosen units."""
+    if term.dimension == Dimension.NUMBER and term.unit:
+        return f"{show(term.value, Dimension.NUMBER, '')} {term.unit}"
     if term.dimension in DIMENSIONS:
         dimension = Dimension(term.dimension)
         return show(term.value, dimension, unit_for(dimension, system, term.unit, term.value))
@@ -93,14 +95,17 @@ def _in_base_units(term: Term, _: UnitSystem) -> str:
 
 def with_numbers(how: Formula[..., object], term: Term, system: UnitSystem) -> str:
     """The right side of a formula with this rig's numbers and units in place of its symbols."""
-    value = _in_base_units if DIMENSIONED.search(how.text) else term_value
-    values = {symbol.text: value(one, system) for symbol, one in zip(how.symbols.values(), term.inputs, strict=True)}
+    wanted = _in_base_units if DIMENSIONED.search(how.text) else term_value
+    values = {
+        symbol.text: show(one.value, Dimension.NUMBER, "") if symbol.dimension == "number" else wanted(one, system)
+        for symbol, one in zip(how.symbols.values(), term.inputs, strict=True)
+    }
     written = "".join(_written(how.text.split("=", 1)[1], values))
     return written.replace("( ", "(").strip()
 
 
 def _written(text: str, values: dict[str, str]) -> Iterator[str]:
-    factor_before = False
+    factor_before, before = False, "("
     tokens = [match.group(1) for match in TOKEN.finditer(text)]
     for token, following in zip(tokens, [*tokens[1:], ""], strict=True):
         starts = token == "(" or token[0].isalnum()
@@ -108,14 +113,15 @@ def _written(text: str, values: dict[str, str]) -> Iterator[str]:
             yield " x "
         if token in FUNCTIONS:
             yield token
-            factor_before = False
+            factor_before, before = False, token
             continue
         if token[0].isalpha():
             number = values.get(token, _constant(token))
             yield f"({number})" if (following == "^" and " " in number) or number.startswith("-") else number
         else:
-            yield f" {token} " if token in "+-*=" else f"{token} " if token == "," else token
-        factor_before = token == ")" or token[0].isalnum()
+            signs = token == "-" and before in "(,"
+            yield token if signs else f" {token} " if token in "+-*=" else f"{token} " if token == "," else token
+        factor_before, before = token == ")" or token[0].isalnum(), token
 
 
 def _constant(token: str) -> str:
@@ -126,13 +132,20 @@ def _constant(token: str) -> str:
     )
 
 
+def origin_text(line: Line) -> str:
+    """Where a given value comes from."""
+    if line.origin == "definition":
+        return "by definition"
+    return line.origin
+
+
 def working_text(finding: Finding, system: UnitSystem) -> list[str]:
     """A working as plain lines."""
     found: list[str] = []
     for line in working(finding, system):
         found.append(f"{line.symbol} = {line.value}   {line.meaning}")
         if line.origin:
-            found.append("    by definition" if line.origin == "definition" else f"    from {line.origin}")
+            found.append(f"    {origin_text(line)}")
         if line.formula:
             found.append(f"    {line.formula}")
         if line.numbers:

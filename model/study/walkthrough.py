@@ -77,7 +77,7 @@ def walk(case: Case) -> Walk:
         _line("largest opening force", lambda: case.forces.opening),
         _line("the same without Cx", case.forces.plain),
         *_shares(case),
-        _line("what the load feels", lambda: derive(load_factor, case.forces.opening, case.masses.falling)),
+        _line("what the load feels", lambda: derive(load_factor, case.forces.opening, case.masses.falling, unit="g")),
     ]
     return Walk(tuple(lines), _line("", lambda: case.forces.opening).term)
 
