@@ -36,7 +36,7 @@ def test_the_model_loads_no_screen() -> None:
 def test_a_check_loads_neither_screen_nor_what_writes_files(tmp_path: Path, words: list[str]) -> None:
     found = loaded("import sys\nfrom tui.main import main\nmain(sys.argv[1:])", *words, str(write(tmp_path)))
     assert {"pydantic", "numpy", "model"} <= found
-    assert not found & {"scipy", "textual", "rich", "tomlkit", "tomli_w", "asyncio", "email", "html"}
+    assert not found & {"scipy", "textual", "rich", "tomlkit", "tomli_w", "asyncio", "html"}
 
 
 def test_the_first_screen_loads_neither_engine_nor_numbers() -> None:
