@@ -164,7 +164,6 @@ class RigslateApp(App[int], inherit_bindings=False):
 
     def on_rigs_found(self, message: RigsFound) -> None:
         """Take in what lies in the folder."""
-        self._tasks.folders = message.folders
         self.folder_problems = message.problems
         if message.found is not None:
             new, gone = self.shelf.take_in(message.found)

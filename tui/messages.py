@@ -29,7 +29,6 @@ class RigsFound(Message):
 
     found: Found | None
     problems: tuple[str, ...]
-    folders: tuple[tuple[Path, Stamp], ...]
 
 
 @dataclass

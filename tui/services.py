@@ -111,6 +111,14 @@ def folders(root: Path) -> Iterator[Path]:
         yield Path(place)
 
 
+def toml_files(folder: Path) -> tuple[Path, ...]:
+    """The names of all files below a folder that may be rigs, records left out, sorted."""
+    return tuple(sorted(
+        path for place in folders(folder) for path in place.glob("*.toml")
+        if not path.name.startswith(".") and not path.name.endswith(".record.toml")
+    ))  # fmt: skip
+
+
 _RIG_TABLE = re.compile(rb"^[ \t]*\[[ \t]*rig[ \t]*\]", re.MULTILINE)
 _LARGEST = 2_000_000
 
@@ -118,13 +126,10 @@ _LARGEST = 2_000_000
 def looks_like_rigs(folder: Path) -> tuple[Path, ...]:
     """The files below a folder that hold a rig table, by a look at their text alone, sorted."""
     found = []
-    for place in folders(folder):
-        for path in place.glob("*.toml"):
-            if path.name.startswith(".") or path.name.endswith(".record.toml"):
-                continue
-            try:
-                if path.stat().st_size <= _LARGEST and path.is_file() and _RIG_TABLE.search(path.read_bytes()):
-                    found.append(path)
-            except OSError:
-                continue
-    return tuple(sorted(found))
+    for path in toml_files(folder):
+        try:
+            if path.is_file() and path.stat().st_size <= _LARGEST and _RIG_TABLE.search(path.read_bytes()):
+                found.append(path)
+        except OSError:
+            continue
+    return tuple(found)

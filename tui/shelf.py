@@ -7,11 +7,12 @@ from dataclasses import dataclass, field
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from tui.services import Found, Stamp
+from tui.services import Found, Stamp, stamps
 
 if TYPE_CHECKING:
     from model.checks.finding import Checklist
 
+WORDS = ("PASS", "FAIL", "OPEN", "NOT COUNTED")
 _KEPT = 40
 """Checklists kept whole; of the others the summary stays."""
 CANNOT_READ = "CAN'T READ"
@@ -42,7 +43,7 @@ class Summary:
             checklist.reference,
             checklist.revision,
             checklist.limit_set,
-            tuple((word, verdicts.count(word)) for word in dict.fromkeys(verdicts)),
+            tuple((word, verdicts.count(word)) for word in WORDS if word in verdicts),  # type: ignore[arg-type]
             (worst.key, worst.title, worst.margin) if worst is not None and worst.margin is not None else None,
             tuple((signature.who, signature.stale) for signature in checklist.signatures),
             checklist.stale,
@@ -93,6 +94,7 @@ class Shelf:
         for path, problem in unreadable.items():
             self.entries[path].problems = (problem,)
             self.entries[path].no_rig = True
+            self.entries[path].stamps = stamps([path])
         return new, gone
 
     def _label(self, path: Path) -> str:
@@ -108,6 +110,7 @@ class Shelf:
             return
         entry.problems = tuple(problems)
         entry.checklist = checklist
+        entry.no_rig = entry.no_rig and checklist is None
         entry.summary = Summary.of(checklist) if checklist is not None else None
         if path in self._kept:
             self._kept.remove(path)

@@ -12,7 +12,7 @@ from textual.worker import get_current_worker
 from tui.answering import Draft
 from tui.jobs import JobBook
 from tui.messages import Checked, FilesChanged, Remedied, RigsFound, RigsGlanced, Worked, Written
-from tui.services import CannotReadError, NotWrittenError, Services, Stamp, folders, stamp, stamps
+from tui.services import CannotReadError, NotWrittenError, Services, Stamp, folders, stamp, stamps, toml_files
 
 if TYPE_CHECKING:
     from model.checks.finding import Checklist, Finding
@@ -40,7 +40,9 @@ class Workers:
         self._app = app
         self._services = services
         self._book = book
-        self.folders: Stamps = ()
+        self._root: Path | None = None
+        self._folders: Stamps = ()
+        self._names: tuple[Path, ...] = ()
         self._looking = False
 
     def _start(self, work: Callable[[], None], group: str) -> None:
@@ -52,18 +54,31 @@ class Workers:
         def work() -> None:
             if glance and path.is_dir():
                 self._app.post_message(RigsGlanced(self._services.glance(path)))
-            # Stamped before the look, so that what changes meanwhile is seen the next time.
-            stamped = stamps(list(folders(path))) if path.is_dir() else ()
+            # Listed before the look, so that what changes meanwhile is seen the next time.
+            self._list(path)
             try:
                 found = self._services.find(path)
             except CannotReadError as error:
-                self._app.post_message(RigsFound(None, error.problems, stamped))
+                self._app.post_message(RigsFound(None, error.problems))
             except Exception as error:
-                self._app.post_message(RigsFound(None, (unexpected(error),), stamped))
+                self._app.post_message(RigsFound(None, (unexpected(error),)))
             else:
-                self._app.post_message(RigsFound(found, (), stamped))
+                self._app.post_message(RigsFound(found, ()))
 
         self._start(work, "find")
+
+    def _list(self, path: Path) -> None:
+        """Note which files lie in the folder."""
+        if path.is_dir():
+            self._root, self._folders, self._names = path, stamps(list(folders(path))), toml_files(path)
+
+    def _folder_changed(self) -> bool:
+        """Whether files came or went; a record that was written anew is no such change."""
+        if self._root is None or all(stamp(path) == old for path, old in self._folders):
+            return False
+        before = self._names
+        self._list(self._root)
+        return self._names != before
 
     def check(self) -> None:
         """Work off the rigs that wait."""
@@ -93,14 +108,13 @@ class Workers:
         if self._looking:
             return
         self._looking = True
-        known = self.folders
 
         def work() -> None:
             try:
                 changed = tuple(
                     rig for rig, stamped in watched.items() if any(stamp(path) != old for path, old in stamped)
                 )
-                folder = any(stamp(path) != old for path, old in known)
+                folder = self._folder_changed()
                 if changed or folder:
                     self._app.post_message(FilesChanged(changed, folder))
             finally:

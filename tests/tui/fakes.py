@@ -99,9 +99,11 @@ class FakeServices:
     refuse: str = ""
     hold: Callable[[], None] | None = None
     checks: list[Path] = field(default_factory=list)
+    finds: int = 0
 
     def find(self, path: Path) -> Found:
         """All rigs known, or the one asked for."""
+        self.finds += 1
         if path in self.checklists or path in self.problems:
             return Found((path,))
         rigs = tuple(sorted({*self.checklists, *self.problems}))

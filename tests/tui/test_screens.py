@@ -322,3 +322,39 @@ async def test_every_key_on_every_screen_keeps_the_program_alive(tmp_path: Path,
             await press(running, key)
         await settled(running)
         assert running.is_running
+
+
+async def test_a_file_that_was_no_rig_is_read_again_when_it_changes(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    notes = tmp_path / "e-notes.toml"
+    notes.write_text("x = 1\n")
+    running = app(tmp_path, model, watch=0.05)
+    async with running.run_test(size=(80, 24)) as pilot:
+        await settled(running)
+        model.checklists[notes] = checklist(notes, name="now a rig")
+        del model.unread[notes]
+        notes.write_text("[rig]\nx = 1\n")
+        for _ in range(100):
+            if "now a rig" in text(running):
+                break
+            await pilot.pause(0.05)
+        assert "now a rig" in text(running)
+        await after(running, "end", "enter")
+        assert isinstance(running.screen, StepsScreen)
+
+
+async def test_a_record_written_beside_the_rigs_does_not_make_the_folder_be_read_again(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    running = app(tmp_path, model, watch=0.05)
+    async with running.run_test(size=(80, 24)) as pilot:
+        await settled(running)
+        seen = model.finds
+        (tmp_path / "a-pump.record.toml").write_text("format = 1\n")
+        await pilot.pause(0.3)
+        assert model.finds == seen
+        (tmp_path / "f-new.toml").write_text("[rig]\n")
+        for _ in range(100):
+            if model.finds > seen:
+                break
+            await pilot.pause(0.05)
+        assert model.finds == seen + 1

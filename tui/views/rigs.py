@@ -24,7 +24,7 @@ def verdict_span(verdict: str, cells: int, chars: Charset) -> list[Span]:
 
 def columns(cells: int) -> tuple[int, int, int, int]:
     """Widths of name, verdict, worst margin and signatures."""
-    verdict, worst, signed = 13, (26 if cells >= _WIDE else 14), 13
+    verdict, worst, signed = 13, (22 if cells >= _WIDE else 14), 13
     return cells - 2 - verdict - worst - signed - 3, verdict, worst, signed
 
 
@@ -83,7 +83,7 @@ def _worst(entry: Entry, cells: int, chars: Charset) -> str:
 
 def margin_share(margin: float) -> str:
     """A margin in per cent with its sign."""
-    from model.report.wording import percent  # noqa: PLC0415  (the first screen comes without it)
+    from model.report.wording import percent
 
     return f"-{percent(margin)}" if margin < 0 else percent(margin)
 
@@ -123,7 +123,10 @@ def detail(entry: Entry | None, *, under_way: bool, cells: int, chars: Charset) 
     who = ", ".join(f"{chars.clean(name)}{' (changed since)' if stale else ''}" for name, stale in summary.signed)
     rows += paragraph(f"signed by {who}" if who else "not signed", cells)
     if summary.stale:
-        rows += paragraph(f"{len(summary.stale)} answers were given before a change and are STALE", cells, "note")
+        count = len(summary.stale)
+        words = "1 answer was given before a change and is STALE" if count == 1 else (
+            f"{count} answers were given before a change and are STALE")  # fmt: skip
+        rows += paragraph(words, cells, "note")
     return rows
 
 
