@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import os
 import sys
 from collections.abc import Sequence
@@ -43,7 +44,12 @@ def _run(words: list[str]) -> int:
 
     if words and words[0] in COMMANDS:
         options = parse(words)
-        module = __import__(f"tui.command_line.{options.command}", fromlist=["run"])
+        # What modules create stays for good: looking through it for garbage while they load takes a cold check longer.
+        gc.disable()
+        try:
+            module = __import__(f"tui.command_line.{options.command}", fromlist=["run"])
+        finally:
+            gc.enable()
         status: int = module.run(options)
         return status
     from tui.command_line.screen import run
