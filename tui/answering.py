@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from typing import Literal
 
-Field = Literal["value", "remark", "who", "second"]
+FieldName = Literal["value", "remark", "who", "second"]
 Choice = Literal["pass", "fail", "does not apply", "withdrawal"]
 
 REPEAT = 0.3
@@ -31,9 +31,9 @@ class Draft:
     second: str | None = None
 
     @property
-    def fields(self) -> tuple[Field, ...]:
+    def fields(self) -> tuple[FieldName, ...]:
         """The fields this answer takes, in the order they are asked for."""
-        wanted: list[Field] = []
+        wanted: list[FieldName] = []
         if self.wants_value and self.choice in ("pass", "fail"):
             wanted.append("value")
         if self.choice != "pass":
@@ -44,17 +44,17 @@ class Draft:
         return tuple(wanted)
 
     @property
-    def next_field(self) -> Field | None:
+    def next_field(self) -> FieldName | None:
         """The next field to ask for; None when nothing is missing."""
         return next((name for name in self.fields if getattr(self, name) is None), None)
 
-    def question(self, name: Field) -> str:
+    def question(self, name: FieldName) -> str:
         """What a field asks, in a few words."""
         if name == "value":
             return self.wants_value
         return {"remark": "remark, why", "who": "your initials", "second": "second person's initials"}[name]
 
-    def problem(self, name: Field, text: str) -> str | None:
+    def problem(self, name: FieldName, text: str) -> str | None:
         """Why a text can't be taken for a field, None where it can."""
         entered = text.strip()
         if len(entered) > LONGEST[name]:
@@ -65,7 +65,7 @@ class Draft:
             return "the second person must be somebody else"
         return None
 
-    def having(self, name: Field, text: str) -> Draft:
+    def having(self, name: FieldName, text: str) -> Draft:
         """The draft with a field filled in.
 
         Raises:

@@ -47,7 +47,7 @@ class RigslateApp(App[int], inherit_bindings=False):
 
     CSS_PATH = "styles.tcss"
     ENABLE_COMMAND_PALETTE = False
-    BINDINGS = [Binding("ctrl+c", "how_to_leave", "How to leave", show=False, system=True)]  # noqa: RUF012
+    BINDINGS = [Binding("ctrl+c", "how_to_leave", "How to leave", show=False, id="app.how_to_leave", system=True)]  # noqa: RUF012
 
     def __init__(
         self,

@@ -6,8 +6,8 @@ from pathlib import Path
 
 import pytest
 
-from tests.tui.fakes import after, app, checklist, findings, press, services, settled, text
-from tui.commands import COMMANDS, Keys, on_screen
+from tests.tui.fakes import after, app, back_to_first, checklist, findings, press, services, settled, text
+from tui.commands import COMMANDS, FORBIDDEN, Keys, on_screen
 from tui.screens.base import BaseScreen
 from tui.screens.help import HelpScreen
 from tui.screens.palette import PaletteScreen
@@ -358,3 +358,15 @@ async def test_a_record_written_beside_the_rigs_does_not_make_the_folder_be_read
                 break
             await pilot.pause(0.05)
         assert model.finds == seen + 1
+
+
+async def test_no_forbidden_key_acts_anywhere_and_every_binding_has_an_id(tmp_path: Path) -> None:
+    running = app(tmp_path, services(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        await settled(running)
+        for keys in (*REACH.values(), ("enter", "end", "f", "enter")):
+            await back_to_first(running)
+            await after(running, *keys)
+            for key, active in running.active_bindings.items():
+                assert key not in FORBIDDEN
+                assert active.binding.id, key

@@ -10,11 +10,12 @@ from textual.containers import Horizontal
 from textual.widget import Widget
 from textual.widgets import Input
 
-from tui.answering import LONGEST, Choice, Draft, Field
+from tui.answering import LONGEST, Choice, Draft, FieldName
 from tui.commands import BY_ID
 from tui.messages import Written
 from tui.rows import Rows, Span, paragraph, row, row_width
 from tui.screens.base import BaseScreen
+from tui.widgets.field import Field
 from tui.widgets.page import Page
 
 if TYPE_CHECKING:
@@ -61,10 +62,10 @@ class AnswerScreen(BaseScreen):
         """The field of an answer."""
         with Horizontal(id="field-line"):
             yield Page(id="asked")
-            yield Input(compact=True, select_on_focus=False, id="field")
+            yield Field(id="field")
 
     @property
-    def _asking(self) -> Field | None:
+    def _asking(self) -> FieldName | None:
         """The field being asked for."""
         return self._draft.next_field if self._draft is not None and self._field_open else None
 

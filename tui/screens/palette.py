@@ -12,6 +12,7 @@ from tui.glyphs import clip, fill
 from tui.rows import Row, Rows, Span, row
 from tui.screens.base import BaseScreen, bindings
 from tui.views.help import matches
+from tui.widgets.field import Field
 from tui.widgets.page import Page
 
 _NOT_LISTED = frozenset(("app.palette",))
@@ -34,13 +35,9 @@ class PaletteScreen(BaseScreen):
     def panes(self) -> Iterator[Widget]:
         """A title, the field, the commands."""
         yield Page(id="columns")
-        yield Input(compact=True, select_on_focus=False, id="words")
+        yield Field(id="words")
         yield Page(id="rule")
         yield Page(id="middle")
-
-    def on_mount(self) -> None:
-        """A steady cursor: blinking tells nothing and costs a repaint."""
-        self.query_one(Input).cursor_blink = False
 
     @property
     def listed(self) -> list[Command]:

@@ -47,7 +47,6 @@ class StepsScreen(BehindScreen):
 
     def on_mount(self) -> None:
         """Show what is known, and have the checklist made where it is not."""
-        self.query_one(Input).cursor_blink = False
         self._take_checklist()
 
     # -- state

@@ -24,7 +24,7 @@ def verdict_span(verdict: str, cells: int, chars: Charset) -> list[Span]:
 
 def columns(cells: int) -> tuple[int, int, int, int]:
     """Widths of name, verdict, worst margin and signatures."""
-    verdict, worst, signed = 13, (22 if cells >= _WIDE else 14), 13
+    verdict, worst, signed = 13, (22 if cells >= _WIDE else 8), 13
     return cells - 2 - verdict - worst - signed - 3, verdict, worst, signed
 
 
@@ -46,7 +46,7 @@ def head(folder: str, entries: Sequence[Entry], left: int, cells: int, chars: Ch
 def column_heads(cells: int, chars: Charset) -> Row:
     """The heads of the columns."""
     name, verdict, worst, signed = columns(cells)
-    texts = (fill("rig", name, chars), fill("verdict", verdict, chars), fill("least margin", worst, chars))
+    texts = (fill("rig", name, chars), fill("verdict", verdict, chars), fill("least margin" if worst > 12 else "margin", worst, chars))
     return row(Span("  " + " ".join((*texts, fill("signed", signed, chars))), "dim"))
 
 

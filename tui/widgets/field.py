@@ -1,0 +1,28 @@
+"""A field for one line of text."""
+
+from __future__ import annotations
+
+from typing import ClassVar
+
+from textual.binding import Binding, BindingType
+from textual.widgets import Input
+
+
+class Field(Input, inherit_bindings=False):
+    """An input of one line, with editing keys that every terminal and multiplexer passes on."""
+
+    BINDINGS: ClassVar[list[BindingType]] = [
+        Binding("left", "cursor_left", "Left", show=False, id="field.left"),
+        Binding("right", "cursor_right", "Right", show=False, id="field.right"),
+        Binding("home", "home", "Start", show=False, id="field.home"),
+        Binding("end", "end", "End", show=False, id="field.end"),
+        Binding("backspace", "delete_left", "Delete left", show=False, id="field.backspace"),
+        Binding("delete", "delete_right", "Delete right", show=False, id="field.delete"),
+        Binding("enter", "submit", "Take it", show=False, id="field.enter"),
+    ]
+
+    def __init__(self, *, id: str | None = None) -> None:  # noqa: A002
+        """Make an empty field of one row."""
+        super().__init__(compact=True, select_on_focus=False, id=id)
+        # A steady cursor: blinking tells nothing and costs repaints.
+        self.cursor_blink = False
