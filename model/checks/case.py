@@ -4,24 +4,22 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from functools import cached_property
-from typing import TYPE_CHECKING
 
+from model.checks.cushions import Cushioning
 from model.checks.day import Day
+from model.checks.finding import Ruling
 from model.checks.forces import Forces
 from model.checks.hanging import Hanging
 from model.checks.heights import Heights
+from model.checks.lashings import Lashings
 from model.checks.masses import Masses
 from model.checks.missing import Missing, need
 from model.checks.motion import Motions
+from model.checks.rates import Rates
 from model.checks.rows import CanopyRow
 from model.rig.limits import LimitSet
 from model.rig.parts import Platform
 from model.rig.rig import Exit, Rig
-
-if TYPE_CHECKING:
-    from model.checks.landing import Cushioning
-    from model.checks.lashing import Lashings
-    from model.checks.step import Ruling
 
 
 class Case:
@@ -35,6 +33,7 @@ class Case:
         self.motions = Motions(rig, self.day, lambda: self.masses.falling, lambda: self.rows)
         self.forces = Forces(self.motions, self.masses)
         self.heights = Heights(self.motions, self.forces)
+        self.rates = Rates(lambda: self.rows, self.masses, self.day, self.motions)
 
     @cached_property
     def rows(self) -> tuple[CanopyRow, ...]:
@@ -47,21 +46,17 @@ class Case:
     @cached_property
     def hanging(self) -> Hanging:
         """How the load hangs."""
-        return Hanging(self)
+        return Hanging(self.rig, self.masses, self.forces)
 
     @cached_property
     def cushioning(self) -> Cushioning:
         """The stacks under the load, or `Missing`."""
-        from model.checks.landing import Cushioning
-
-        return Cushioning(self)
+        return Cushioning(self.rig, self.masses, self.rates, self.rulings)
 
     @cached_property
     def lashings(self) -> Lashings:
         """The lashings, or `Missing`."""
-        from model.checks.lashing import Lashings
-
-        return Lashings(self)
+        return Lashings(self.rig)
 
     @property
     def platform(self) -> Platform:
@@ -72,10 +67,3 @@ class Case:
     def exit(self) -> Exit:
         """How the load leaves, or `Missing`."""
         return need(self.rig.exit, "exit")
-
-    @cached_property
-    def open_at_end(self) -> tuple[CanopyRow, ...]:
-        """The rows that hang open on the way to the ground."""
-        rows = self.rows
-        staying = [one for one in rows[:-1] if need(one.row.when_next_opens, one.field("when_next_opens")) == "stays"]
-        return (*staying, rows[-1])

@@ -8,9 +8,9 @@ from pathlib import Path
 
 from model.checks import inspected, registry
 from model.checks.case import Case
-from model.checks.finding import Checklist, Finding, Limit, Signature, Verdict
+from model.checks.finding import Checklist, Finding, Limit, Ruling, Signature, Verdict
 from model.checks.inputs import verify
-from model.checks.step import Ruling, Step, bound_in_unit, judge
+from model.checks.step import Step, bound_in_unit, judge
 from model.rig import digest, record
 from model.rig.entry import Entry
 from model.rig.errors import InputError, InputProblem

@@ -92,6 +92,16 @@ class Limit:
         return min(gap / size for gap, size in gaps)
 
 
+@dataclass(frozen=True)
+class Ruling:
+    """What the limit set says of a step: its limit, and whether it counts and needs a measured figure."""
+
+    limit: Limit | None = None
+    judged: bool = True
+    needs_measured: bool = False
+    source: str = ""
+
+
 @dataclass(frozen=True, slots=True)
 class Answer:
     """The standing answer of an inspected step."""

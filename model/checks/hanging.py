@@ -4,19 +4,17 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from functools import cached_property, lru_cache
-from typing import TYPE_CHECKING
 
 import numpy as np
 
+from model.checks.forces import Forces
+from model.checks.masses import Masses
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
 from model.checks.term import LESS, Procedure, Term, combine, derive, given, known, read, read_count
 from model.physics import hanging, sling, strength
 from model.physics.hanging import Hang, Outcome
 from model.rig.parts import Leg
-from model.rig.rig import point
-
-if TYPE_CHECKING:
-    from model.checks.case import Case
+from model.rig.rig import Rig, point
 
 BALANCE_TEXT = (
     "sum of t_i d_i = F e; with more than three legs t_i = k_i d_i . delta, k_i = plies x strength/length, "
@@ -41,15 +39,15 @@ def solve(values: tuple[float, ...], legs: int) -> Hang:
 
 
 class Hanging:
-    """The suspension of a case."""
+    """The suspension of a rig."""
 
-    def __init__(self, case: Case) -> None:
-        self.case = case
+    def __init__(self, rig: Rig, masses: Masses, forces: Forces) -> None:
+        self.rig, self.masses, self.forces = rig, masses, forces
 
     @cached_property
     def legs(self) -> tuple[Leg, ...]:
         """The suspension legs; fewer than three leave the steps open."""
-        legs = self.case.rig.leg
+        legs = self.rig.leg
         if not legs:
             raise Missing("leg")
         if len(legs) < 3:
@@ -62,15 +60,15 @@ class Hanging:
 
     def places(self) -> list[tuple[float, float, float]]:
         """Where the legs are attached, in deck coordinates."""
-        rig = self.case.rig
+        rig = self.rig
         return [point(rig, need(leg.at, self.field(i, "at"))) for i, leg in enumerate(self.legs)]
 
     @cached_property
     def apex(self) -> tuple[Term, Term, Term]:
         """The confluence point: given, or solved from the measured leg lengths."""
-        suspension = self.case.rig.suspension
+        suspension = self.rig.suspension
         if suspension is not None and suspension.apex is not None:
-            place = point(self.case.rig, suspension.apex)
+            place = point(self.rig, suspension.apex)
             units = [reading.unit for reading in suspension.apex]
             terms = [
                 known(place[i], f"{axis}a", f"{axis} of the confluence point", "length", "suspension.apex", units[i])
@@ -101,7 +99,7 @@ class Hanging:
         """Where a leg is attached, in deck coordinates."""
         leg = self.legs[i]
         reading = need(leg.at, self.field(i, "at"))
-        place = point(self.case.rig, reading)
+        place = point(self.rig, reading)
         return [
             known(
                 place[k],
@@ -121,7 +119,7 @@ class Hanging:
             inputs.append(read(leg.strength, "S", f"strength of one ply, leg {i + 1}", self.field(i, "strength")))
             inputs.append(self.plies(i))
         inputs += self.apex
-        inputs += [self.case.masses.centre_without_canopies(axis) for axis in range(3)]
+        inputs += [self.masses.centre_without_canopies(axis) for axis in range(3)]
         return [*inputs, force, self.turn]
 
     def plies(self, i: int) -> Term:
@@ -132,7 +130,7 @@ class Hanging:
     @cached_property
     def turn(self) -> Term:
         """How far the pull is turned off its axis."""
-        suspension = self.case.rig.suspension
+        suspension = self.rig.suspension
         if suspension is None or suspension.pull_off_axis is None:
             return known(0.0, "beta", "pull off its axis", "angle", "none given: 0", "deg")
         return given(suspension.pull_off_axis, "beta", "pull off its axis", "suspension.pull_off_axis")
@@ -143,14 +141,14 @@ class Hanging:
     @cached_property
     def carrying(self) -> Term:
         """How many legs are taken to share the load."""
-        suspension = self.case.rig.suspension
+        suspension = self.rig.suspension
         field = "suspension.legs_carrying"
         return read_count(suspension.legs_carrying if suspension else None, "c", "legs carrying", field)
 
     @cached_property
     def loads(self) -> tuple[Term, ...]:
         """Load of every leg at the largest opening force, as few legs carrying as the rig says."""
-        inputs = self._inputs(self.case.forces.opening)
+        inputs = self._inputs(self.forces.opening)
         hung = self._hang(inputs)
         if hung.outcome is not Outcome.BALANCED:
             raise Failed(f"{hung.outcome}: the pull {hung.worst.name} cannot be held")
@@ -204,7 +202,7 @@ class Hanging:
     def tilt(self) -> Term:
         """Tilt of the pull's axis, from the centre of gravity to the confluence point."""
         _ = self.legs
-        centre = [self.case.masses.centre_without_canopies(axis) for axis in range(3)]
+        centre = [self.masses.centre_without_canopies(axis) for axis in range(3)]
         away = self._away(centre, "the centre of gravity")
         if away[2].value <= 0:
             raise Failed(str(Outcome.NOT_ABOVE))

@@ -7,24 +7,11 @@ from model.checks.missing import CannotJudge, need
 from model.checks.rows import CanopyRow
 from model.checks.step import Outcome, Row, Step, own_limit
 from model.checks.term import Term, derive, given, least, read, read_count
-from model.physics import balance, strength
-from model.physics.formula import formula
-from model.physics.types import Real
-
-
-@formula(
-    "G = F/(m g0)",
-    result="G | opening load factor | number",
-    symbols={"force": "F | largest opening force | force", "mass": "m | falling mass | mass"},
-    source="definition",
-)
-def load_factor(force: Real, mass: Real) -> Real:
-    """Opening force over weight, in g0."""
-    return force / (mass * 9.80665)
+from model.physics import balance, canopy, strength
 
 
 def _load_factor(case: Case) -> Outcome:
-    result = derive(load_factor, case.forces.opening, case.masses.falling, unit="g")
+    result = derive(canopy.load_factor, case.forces.opening, case.masses.falling, unit="g")
     return _outcome(case, result)
 
 

@@ -7,7 +7,7 @@ from dataclasses import dataclass, field, replace
 from math import isfinite, ulp
 
 from model.checks.case import Case
-from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Verdict
+from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Ruling, Verdict
 from model.checks.missing import CannotJudge, Failed, Missing
 from model.checks.term import Term
 from model.quantity import Quantity
@@ -64,16 +64,6 @@ class Step:
     def limited_by(self) -> str:
         """Key of the limit that holds for this step."""
         return self.limit_key or self.key
-
-
-@dataclass(frozen=True)
-class Ruling:
-    """What the limit set says of a step: its limit, and whether it counts and needs a measured figure."""
-
-    limit: Limit | None = None
-    judged: bool = True
-    needs_measured: bool = False
-    source: str = ""
 
 
 def in_step_unit(term: Term, unit: str) -> float:

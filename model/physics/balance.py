@@ -170,3 +170,14 @@ def mass_per_canopy(suspended: Real, count: Real) -> Real:
     Source: definition.
     """
     return suspended / count
+
+
+@formula(
+    "W = m g0",
+    result="W | weight | force",
+    symbols={"mass": "m | mass | mass"},
+    source="definition",
+)
+def weight(mass: Real) -> Real:
+    """Weight of a mass, N."""
+    return mass * 9.80665

@@ -205,3 +205,14 @@ def in_handbook_class(diameter: float, loading: float) -> bool:
         low * (1 - grain) <= value <= high * (1 + grain)
         for value, (low, high) in ((diameter, HANDBOOK_DIAMETERS), (loading, HANDBOOK_LOADINGS))
     )
+
+
+@formula(
+    "G = F/(m g0)",
+    result="G | opening load factor | number",
+    symbols={"force": "F | largest opening force | force", "mass": "m | falling mass | mass"},
+    source="definition",
+)
+def load_factor(force: Real, mass: Real) -> Real:
+    """Opening force over weight, in g0."""
+    return force / (mass * 9.80665)

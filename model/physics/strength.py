@@ -264,3 +264,17 @@ def tie_strength(strands: Real, strength: Real, knot_efficiency: Real) -> Real:
 def tie_strength_most(strands: Real, strength: Real) -> Real:
     """Most force in N that a tie may hold before it breaks."""
     return strands * strength
+
+
+@formula(
+    "k = a/(G g0)",
+    result="k | fragility/net deceleration | number",
+    symbols={
+        "fragility": "a | largest net deceleration allowed | acceleration",
+        "net": "G | net deceleration | number",
+    },
+    source="definition",
+)
+def fragility_ratio(fragility: Real, net: Real) -> Real:
+    """Fragility, m/s2, over the net deceleration in g0."""
+    return fragility / (net * 9.80665)

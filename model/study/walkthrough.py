@@ -10,7 +10,7 @@ from math import sqrt
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, Failed, Missing
 from model.checks.motion import Rule
-from model.checks.opening import canopy_share, load_factor, snatch_of
+from model.checks.opening import canopy_share, snatch_of
 from model.checks.rows import CanopyRow, Filling
 from model.checks.term import Procedure, Term, combine, derive, known, largest
 from model.physics import canopy, drag, inflation, ludtke
@@ -77,7 +77,10 @@ def walk(case: Case) -> Walk:
         _line("largest opening force", lambda: case.forces.opening),
         _line("the same without Cx", case.forces.plain),
         *_shares(case),
-        _line("what the load feels", lambda: derive(load_factor, case.forces.opening, case.masses.falling, unit="g")),
+        _line(
+            "what the load feels",
+            lambda: derive(canopy.load_factor, case.forces.opening, case.masses.falling, unit="g"),
+        ),
     ]
     return Walk(tuple(lines), _line("", lambda: case.forces.opening).term)
 

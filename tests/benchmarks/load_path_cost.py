@@ -12,7 +12,8 @@ from statistics import median
 
 from model.checks import registry
 from model.checks.case import Case
-from model.checks.step import Ruling, judge
+from model.checks.finding import Ruling
+from model.checks.step import judge
 from model.rig.reading import load
 
 RIGS = Path(__file__).parents[2] / "rigs"
