@@ -67,7 +67,7 @@ def _chebyshev(degree: int) -> tuple[Array, Array]:
 
 
 @lru_cache(maxsize=32)
-def _shared(density: Density, low: float, high: float) -> Air:
+def _cached(density: Density, low: float, high: float) -> Air:
     return Air(density, low, high)
 
 
@@ -75,6 +75,6 @@ def air_between(density: Density, low: float, high: float) -> Air:
     """The density over a range of altitudes, m, that holds ``low`` and ``high``."""
     low, high = float(np.floor(low / GRID) * GRID), float(np.ceil(high / GRID) * GRID)
     try:
-        return _shared(density, low, high)
+        return _cached(density, low, high)
     except TypeError:       # a callable that cannot be hashed
         return Air(density, low, high)

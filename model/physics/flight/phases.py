@@ -16,7 +16,7 @@ from .record import Recorder
 from .state import Mask, State
 from .trigger import NextRow
 
-FILLING_SPAN = 5.0
+FILLING_SPAN = 4.0
 """Longest piece of a filling, in units of V/g at the steady rate of descent; by distance in units of 1/k."""
 SPAN = 4.0
 """The same for a hold."""

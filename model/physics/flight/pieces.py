@@ -26,7 +26,7 @@ from .state import Load, State
 from .wind import Layer
 
 ITERATIONS = 16
-CONVERGED = 3e-7
+CONVERGED = 1.5e-7
 """Iterations end when the next change is estimated to be less, relative."""
 SLOWEST = 1e-6
 """m/s; a flight through the air by distance is not followed below."""
