@@ -6,11 +6,11 @@ import os
 import sys
 from collections.abc import Callable, Iterable, Mapping
 from pathlib import Path
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, ClassVar
 
 from textual import events
 from textual.app import App
-from textual.binding import Binding
+from textual.binding import Binding, BindingType
 from textual.screen import Screen
 from textual.theme import Theme
 
@@ -47,7 +47,9 @@ class RigslateApp(App[int], inherit_bindings=False):
 
     CSS_PATH = "styles.tcss"
     ENABLE_COMMAND_PALETTE = False
-    BINDINGS = [Binding("ctrl+c", "how_to_leave", "How to leave", show=False, id="app.how_to_leave", system=True)]  # noqa: RUF012
+    BINDINGS: ClassVar[list[BindingType]] = [
+        Binding("ctrl+c", "how_to_leave", "How to leave", show=False, id="app.how_to_leave", system=True)
+    ]
 
     def __init__(
         self,
@@ -233,8 +235,8 @@ class RigslateApp(App[int], inherit_bindings=False):
 
     def write_answer(self, rig: Path, checklist: Checklist, draft: Draft) -> None:
         """Have an answer written to the record."""
-        entry = self.shelf.entries[rig]
-        self._tasks.write(rig, checklist, draft, entry.stamps)
+        entry = self.shelf.entries.get(rig)
+        self._tasks.write(rig, checklist, draft, entry.stamps if entry is not None else ((rig, None),))
 
     def on_written(self, message: Written) -> None:
         """Hand on how writing went, and read the record again."""

@@ -236,6 +236,17 @@ async def settled(running: RigslateApp) -> str:
     return text(running)
 
 
+async def until(running: RigslateApp, words: str) -> str:
+    """The screen once it says something, blanks and line ends apart."""
+    for _ in range(250):
+        if words in " ".join(text(running).split()):
+            break
+        await asyncio.sleep(0.02)
+    shown = " ".join((await settled(running)).split())
+    assert words in shown
+    return shown
+
+
 async def after(running: RigslateApp, *keys: str) -> str:
     """The screen after some keys."""
     for key in keys:

@@ -5,7 +5,7 @@ from pathlib import Path
 
 from textual import events
 
-from tests.tui.fakes import MORNING, after, app, services, settled
+from tests.tui.fakes import MORNING, after, app, services, settled, until
 from tui.app import RigslateApp
 
 TIES = ("down", "down")
@@ -214,3 +214,28 @@ async def test_a_held_answer_key_chooses_once_and_opens_nothing(tmp_path: Path) 
         shown = await after(running, "f", "f", "f")
         assert "Chosen: fail" in shown
     assert model.entries == []
+
+
+async def test_a_field_left_by_tab_keeps_its_text_and_no_letter_replaces_the_answer(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    running = app(tmp_path / "a-pump.toml", model)
+    async with running.run_test(size=(80, 24)):
+        await settled(running)
+        shown = await after(running, "end", "f", "enter", *"sla", "tab", "p")
+        assert "Tab leads back to it" in shown
+        await after(running, "3", *"ck", "enter", *"AM", "enter")
+    assert (model.entries[0][1].choice, model.entries[0][1].remark) == ("fail", "slack")
+
+
+async def test_a_window_made_too_small_and_large_again_keeps_the_field(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    running = app(tmp_path / "a-pump.toml", model)
+    async with running.run_test(size=(80, 24)) as pilot:
+        await settled(running)
+        await after(running, "end", "f", "enter", *"sla")
+        await pilot.resize_terminal(40, 10)
+        assert "remark" not in await until(running, "rigslate needs 60 x 20")
+        await pilot.resize_terminal(80, 24)
+        await until(running, "remark, why: sla")
+        await after(running, *"ck", "enter", *"AM", "enter")
+    assert model.entries[0][1].remark == "slack"

@@ -6,7 +6,7 @@ from pathlib import Path
 
 import pytest
 
-from tests.tui.fakes import after, app, back_to_first, checklist, findings, press, services, settled, text
+from tests.tui.fakes import after, app, back_to_first, checklist, findings, press, services, settled, text, until
 from tui.commands import COMMANDS, FORBIDDEN, Keys, on_screen
 from tui.screens.base import BaseScreen
 from tui.screens.help import HelpScreen
@@ -286,9 +286,9 @@ async def test_a_window_too_small_says_so_acts_on_nothing_and_comes_back(tmp_pat
         await after(running, "down", "w")
         assert isinstance(running.screen, StepsScreen)
         await pilot.resize_terminal(80, 24)
-        assert "step 5 of 9" in await settled(running)
+        await until(running, "step 5 of 9")
         await pilot.resize_terminal(59, 24)
-        assert "rigslate needs 60 x 20" in await settled(running)
+        await until(running, "rigslate needs 60 x 20")
 
 
 async def test_ctrl_c_says_how_to_leave_and_ctrl_q_leaves(tmp_path: Path) -> None:
@@ -370,3 +370,20 @@ async def test_no_forbidden_key_acts_anywhere_and_every_binding_has_an_id(tmp_pa
             for key, active in running.active_bindings.items():
                 assert key not in FORBIDDEN
                 assert active.binding.id, key
+
+
+async def test_a_rig_whose_file_is_gone_shows_no_numbers(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    running = app(tmp_path, model, watch=0.05)
+    async with running.run_test(size=(80, 24)) as pilot:
+        await settled(running)
+        await after(running, "enter", "up")
+        del model.checklists[tmp_path / "a-pump.toml"]
+        (tmp_path / "a-pump.toml").unlink()
+        for _ in range(100):
+            if "file is gone" in text(running):
+                break
+            await pilot.pause(0.05)
+        shown = text(running)
+        assert "This rig's file is gone" in shown
+        assert "29.43" not in shown

@@ -123,11 +123,17 @@ class AnswerScreen(BaseScreen):
             rows = paragraph(f" {question}: ", cells // 2 + 4, "key")
             shown = row(*rows[0], " ")
             self.put("asked", [shown]).styles.width = row_width(shown)
+            if self._pane == 3 and self.focused is None:
+                # A window that was too small took the field away, and the focus with it.
+                self.set_focus(self.query_one(Input))
 
     def action_answer(self, choice: Choice) -> None:
         """Choose an answer; Enter writes it."""
         finding = self.finding
         if self.slate.repeated or self._writing:
+            return
+        if self._field_open:
+            self.say(f"An answer is being given: Tab leads back to it, {self.key_text('app.back')} drops it.")
             return
         if finding is None or finding.inspection is None:
             self.say("This step is computed; it takes no answer.")

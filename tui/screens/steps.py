@@ -22,6 +22,10 @@ from tui.widgets.page import Page
 if TYPE_CHECKING:
     from model.checks.finding import Finding
 
+GONE = "This rig's file is gone from the folder."
+RELEASES_NOTHING = "This releases nothing: local rules and licensed riggers decide."
+
+
 class StepsScreen(BehindScreen):
     """Steps of one rig, gone through one by one; inspected steps are answered here."""
 
@@ -66,6 +70,16 @@ class StepsScreen(BehindScreen):
         if rig == self.rig:
             self._take_checklist()
             self.draw_soon()
+
+    def shelf_changed(self) -> None:
+        """Stay with the rig, or say that its file is gone."""
+        if self.rig in self.slate.shelf.entries:
+            self._take_checklist()
+        else:
+            self._checklist = None
+            self._drop_draft()
+            self.say(GONE, "fail")
+        self.draw_soon()
 
     def _take_checklist(self) -> None:
         entry = self.slate.shelf.entries.get(self.rig)
@@ -138,6 +152,8 @@ class StepsScreen(BehindScreen):
 
     def _state(self) -> str:
         entry = self.slate.shelf.entries.get(self.rig)
+        if entry is None and self.slate.shelf.entries:
+            return GONE
         return "can't be read" if entry is not None and entry.problems and not self.under_way else "calculating"
 
     def _draw_board(self, cells: int) -> None:
@@ -232,7 +248,10 @@ class StepsScreen(BehindScreen):
             self.say("This is the only open step.")
         else:
             failing = [finding.key for finding in self.findings if finding.verdict == "FAIL"]
-            self.say(f"No step is open; failing: {', '.join(failing)}." if failing else "No step is open.")
+            self.say(
+                f"No step is open; failing: {', '.join(failing)}." if failing
+                else f"No step is open. {RELEASES_NOTHING}"
+            )
 
     def action_pane(self, number: int) -> None:
         """Jump to a pane."""
