@@ -2,22 +2,30 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
+from functools import lru_cache
 
 import numpy as np
+from numpy.typing import NDArray
 
 from model.checks.day import Day
 from model.checks.missing import need
 from model.checks.rows import CanopyRow
+from model.physics.day_air import DayAir
 from model.physics.flight import Drop, Filling, Row
 from model.rig.canopy import WhenNextOpens
 from model.rig.rig import Rig
 
 
+@lru_cache(maxsize=64)
+def _density(air: DayAir) -> Callable[[NDArray[np.float64]], NDArray[np.float64]]:
+    """The air's density as the engine calls it; one object for each air, for the engine remembers its fit by it."""
+    return lambda height: np.asarray(air.density(height))
+
+
 def build(values: Mapping[str, float], rig: Rig, day: Day, rows: Sequence[CanopyRow]) -> Drop:
     """A drop from the values of `Motions.plan`."""
     weather = [values[f"air {i}"] for i in range(len(day.inputs))]
-    air = day.air(*weather)
     winds = tuple((values[f"wind {i} height"], values[f"wind {i} speed"]) for i in range(len(day.winds())))
     return Drop(
         mass=values["mass"],
@@ -25,7 +33,7 @@ def build(values: Mapping[str, float], rig: Rig, day: Day, rows: Sequence[Canopy
         release_height=values["release_height"],
         load_drag_area=values["load_drag_area"],
         rows=tuple(_row(values, k, one, last=k == len(rows) - 1) for k, one in enumerate(rows)),
-        density=lambda height: np.asarray(air.density(height)),
+        density=_density(day.air(*weather)),
         ground_altitude=weather[0],
         winds=winds,
     )
