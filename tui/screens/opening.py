@@ -59,7 +59,7 @@ class OpeningScreen(WalkedScreen):
         """Draw everything."""
         self.put("columns", [self._title(cells)])
         self.put("rule", [row(Span(self.chars.rule * cells, "rule"))])
-        both = cells >= _WIDE and not self._wide_curve
+        both = cells >= _WIDE and not self._wide_curve and self._shot is not None
         left = cells // 2 + 1 if both else cells
         height = max(self.query_one("#body").size.height, 5)
         self._place(left if both else 0)
@@ -162,8 +162,11 @@ class OpeningScreen(WalkedScreen):
     def action_next_line(self, by: int) -> None:
         """Open the next line, or the one before."""
         at = max(0, min(self._at + by, len(self._listed) - 1))
-        if at == self._at and self._listed:
-            self.say("That is the last line." if by > 0 else "That is the first line.", "dim")
+        if at == self._at or not self._listed:
+            said = "That is the last line." if by > 0 else "That is the first line."
+            if not self._listed:
+                said = "Still calculating." if self.calculating else "There are no lines."
+            self.say(said, "dim")
             return
         self._at = at
         self.hush()
@@ -189,7 +192,7 @@ class OpeningScreen(WalkedScreen):
         """Move the chosen input by a step."""
         self.hush()
         if self._start is None or self._moves.input is None:
-            self.say("No input can be moved.")
+            self.say("Still calculating." if self._opening else "No input can be moved.")
         elif self._moves.change(direction, self.slate.system):
             self._ask()
         else:

@@ -157,6 +157,11 @@ class WalkedScreen(MovedFileScreen):
             self._open()
         self.draw_soon()
 
+    def shelf_changed(self) -> None:
+        """Say that the file is gone; what was read of it stands."""
+        if self.rig not in self.slate.shelf.entries:
+            self.say("This rig's file is gone from the folder; the numbers are those it had.", "fail")
+
     def units_changed(self) -> None:
         """Numbers in another unit."""
         self._ask()

@@ -11,7 +11,7 @@ from model.quantity import Dimension, to_unit
 from model.report.canvas import ASCII, BRAILLE, Style
 from model.report.chart import Chart, Curve
 from model.report.curve import LEAST_HEIGHT, draw_runs
-from model.report.wording import margin_text, value_text
+from model.report.wording import bound_text, margin_text, value_text
 from tui.glyphs import Charset, width
 from tui.openings import Shot
 from tui.rows import Row, Span, Tone, paragraph, row
@@ -113,11 +113,14 @@ def _limit_said(seen: Seen) -> list[str]:
     """How the load factor stands to its limit, and how far apart the methods are."""
     shot, limited = seen.shot, seen.limited
     said: list[str] = []
-    if limited is not None and limited.limit is not None and shot.margin is not None:
+    if shot.felt is None:
+        said.append(f"load factor: {shot.walk.lines[-1].missing or 'no value'}")
+    elif limited is not None and limited.limit is not None and shot.margin is not None:
         now = replace(limited, value=shot.felt, margin=shot.margin)
         said.append(f"load factor {value_text(now, shot.system)}: {margin_text(now)}")
-    elif limited is not None and limited.limit is None:
-        said.append("load factor: no limit set")
+    elif limited is not None:
+        now = replace(limited, value=shot.felt)
+        said.append(f"load factor {value_text(now, shot.system)}: {bound_text(now, shot.system)}")
     spread = range_text(shot.walk)
     return [*said, f"methods: {spread} of the motion"] if spread else said
 

@@ -10,7 +10,7 @@ from model.physics.formula import Formula
 from model.report import wording
 from model.report.working import term_value, with_numbers
 from tui.answering import Draft
-from tui.glyphs import Charset, clip, fill, fill_left, width, wrap
+from tui.glyphs import Charset, clip, fill, fill_left, width
 from tui.rows import EMPTY, Row, Span, ends, indented, paragraph, row, row_width
 from tui.services import Remedy
 from tui.stepping import groups, order, place
@@ -215,17 +215,3 @@ def written_rows(draft: Draft, cells: int, chars: Charset) -> list[Row]:
     words = "taken back" if draft.choice == "withdrawal" else f"'{draft.choice}'"
     who = f"{draft.who} and {draft.second}" if draft.second else draft.who or ""
     return paragraph(f"Written to the record: {words}, by {chars.clean(who)}.", cells, "title")
-
-
-def working_rows(lines: Sequence[str], cells: int, chars: Charset) -> list[Row]:
-    """The working as plain text, indents kept."""
-    rows: list[Row] = []
-    for line in lines:
-        text = line.lstrip()
-        blanks = min(len(line) - len(text), max(cells // 3, 1))
-        cleaned = chars.clean(text)
-        wrapped = [cleaned] if width(cleaned) + blanks <= cells else wrap(cleaned, cells - blanks, "  ")
-        rows += [row(" " * blanks + part) for part in wrapped]
-    return rows
-
-

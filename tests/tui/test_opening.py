@@ -1,0 +1,393 @@
+"""The opening screen by keys, with the real model on demo rigs."""
+
+import re
+from pathlib import Path
+from threading import Event
+
+import pytest
+
+from model.checks.checklist import check
+from model.quantity import UnitSystem
+from model.study.walkthrough import walk
+from tests.tui.fakes import after, press, settled, text
+from tests.tui.opening_rigs import (
+    HALF,
+    MEASURED,
+    REEFED,
+    TWO_ROWS,
+    WARM,
+    copied,
+    on_opening,
+    opening,
+    running_on,
+)
+from tui.openings import Changes, Openings, Shot, Start
+
+
+class Held:
+    """The real model, which waits until it may go on."""
+
+    def __init__(self, real: Openings) -> None:
+        self.real, self.go, self.asked = real, Event(), list[float]()
+
+    def open(self, rig: Path, system: UnitSystem) -> Start:
+        return self.real.open(rig, system)
+
+    def shot(self, start: Start, changes: Changes, system: UnitSystem) -> Shot:
+        if changes:
+            self.asked += changes.values()
+            assert self.go.wait(20)
+        return self.real.shot(start, changes, system)
+
+    def write(self, start: Start, changes: Changes, path: Path) -> None:
+        self.real.write(start, changes, path)
+
+
+def shown(screen: str) -> str:
+    """A screen's words without its line breaks."""
+    return re.sub(r"\s+", " ", screen)
+
+
+def left(screen: str) -> str:
+    """The words of the lines, without the curve beside them."""
+    return shown("\n".join(line[:41] for line in screen.splitlines()))
+
+
+async def test_lines_open_one_by_one_with_formula_numbers_and_source(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        assert "line 1 of 20" in await on_opening(running)
+        screen = await after(running, "space", "space", "space", "space")
+        assert "line 5 of 20" in screen
+        assert "▸ 5 filling time" in screen
+        for words in ("tf = L/V", "= 512 ft/129.5 kt", "source: Knacke", "go first"):
+            assert words in left(screen) + shown(screen)
+        assert "line 4 of 20" in await after(running, "backspace")
+        assert "line 20 of 20" in await after(running, "end")
+        assert "That is the last line." in await after(running, "space")
+        await after(running, "home")
+        assert "That is the first line." in await after(running, "backspace")
+
+
+async def test_every_line_has_a_value_and_says_where_it_comes_from(tmp_path: Path) -> None:
+    rig = copied(tmp_path, REEFED)
+    titles = [line.title for line in walk(check(rig).details).lines]
+    running = running_on(rig)
+    async with running.run_test(size=(120, 60)):
+        await on_opening(running)
+        listed = opening(running)._listed
+        assert [one.line.title for one in listed if one.line] == titles
+        for number in range(len(listed)):
+            screen = shown(text(running))
+            assert f"line {number + 1} of {len(listed)}" in screen
+            assert re.search(r"source: |from |by definition|least and largest|measured: |rig file|file", screen)
+            await after(running, "space")
+
+
+async def test_peak_time_limit_and_margin_stand_beside_the_curve_at_both_sizes(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)) as pilot:
+        for columns, rows in ((80, 24), (60, 20)):
+            await pilot.resize_terminal(columns, rows)
+            screen = shown(await (settled(running) if columns == 60 else on_opening(running)))
+            assert re.search(r"time rule: peak 15,\d{3} lbf at 3\.\d\d s", screen)
+            assert re.search(r"limit 9 g: 18,\d{3} lbf", screen)
+            assert re.search(r"load factor 7\.\d+ g: margin 1\d %", screen)
+            assert re.search(r"methods: 87 % to 133 % of the motion", screen)
+            assert "riggers go first" in screen
+            wide = await after(running, "z")
+            assert "canopy force, lbf" in wide
+            assert wide.count("┤") > 1
+            assert "peak 15," in wide
+            assert all(len(line) <= columns for line in wide.splitlines())
+            await after(running, "z")
+
+
+async def test_a_moved_input_moves_lines_and_curve_and_the_file_value_stays_marked(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        before = await on_opening(running)
+        assert "as in the file" in before
+        screen = shown(await after(running, "m", "right"))
+        assert "2,284 lb moved, file 2,084 lb" in screen
+        assert "1 moved" in screen
+        assert "file: peak 15,846 lbf" in screen
+        assert re.search(r"time rule: peak 1[67],\d{3} lbf", screen)
+        assert "calculating" not in screen
+        assert "ratio" not in screen
+        back = await after(running, "0")
+        assert "2,084 lb as in the file" in shown(back)
+        assert "peak 15,846 lbf" in back
+        assert "file: peak" not in back
+        assert "Nothing is moved." in await after(running, "0")
+
+
+async def test_what_is_shown_is_what_the_model_makes_of_the_moved_values(tmp_path: Path) -> None:
+    rig = copied(tmp_path)
+    running = running_on(rig)
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "down", "right", "right", "down", "left")
+        screen = opening(running)
+        written = tmp_path / "by-hand.toml"
+        words = rig.read_text(encoding="utf-8").replace('"130 kt', '"132 kt')
+        written.write_text(words.replace('release_height = "1,250 ft', 'release_height = "1,230 ft'), encoding="utf-8")
+        by_hand = walk(check(written).details)
+        assert screen._shot is not None
+        for one, other in zip(screen._shot.walk.lines, by_hand.lines, strict=True):
+            assert (one.term is None) == (other.term is None)
+            if one.term is not None and other.term is not None:
+                assert one.term.value == pytest.approx(other.term.value, rel=1e-9)
+
+
+async def test_numbers_keep_their_columns_while_inputs_move(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "end", *["backspace"] * 9)
+
+        def ends(screen: str) -> list[int]:
+            rows = [line[:41] for line in screen.splitlines()[3:17]]
+            return [len(line.rstrip()) for line in rows if re.search(r"\d (lbf|s|g|psf|kt)$", line.rstrip())]
+
+        before = ends(text(running))
+        assert before
+        assert set(before) == {40}
+        assert set(ends(await after(running, "m", "right", "right"))) == {40}
+
+
+async def test_the_curves_follow_each_other_and_each_has_its_numbers(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "z")
+        descent = await after(running, "g")
+        assert "rate of descent, ft/s" in descent
+        assert "at touchdown 29.26 ft/s" in descent
+        area = await after(running, "g")
+        assert "drag area of the canopies, ft2" in area
+        assert "full: 2,413 ft2" in area
+        assert "canopy force, lbf" in await after(running, "g")
+
+
+async def test_units_change_lines_curve_and_inputs(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "right")
+        screen = shown(await after(running, "u"))
+        assert "canopy force, kN" in screen
+        assert "1.023 kg/m3" in screen or "0.99" in screen
+        assert "kg moved, file 945.3 kg" in screen
+        assert "lbf" not in screen
+        assert "file: peak 70.49 kN" in screen
+
+
+async def test_contradicting_values_give_a_reason_and_no_number(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        # The dew point of the file is 14 °C.
+        screen = await on_opening(running, "down", "down", "down", "down", "m", "left", "left")
+        assert "No result with these values" in screen
+        assert "dew" in screen
+        assert "lbf" not in screen
+        assert "Nothing" not in await after(running, "k")
+        await after(running, "escape")
+        assert "line 1 of 20" in await after(running, "0")
+
+
+async def test_methods_stand_side_by_side_with_their_share_and_warnings(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 50)):
+        screen = left(await on_opening(running, *["space"] * 7))
+        assert "methods, and their share of the motion" in screen
+        assert "1,197 %, not counted" in screen
+        assert "Caution: ballistic parameter under 10" in screen
+        assert "100 %" in screen
+        last = left(await after(running, "end"))
+        assert "range of methods 87 % to 133 %" in last
+        assert "path flown while filling" in last
+        assert "not counted: infinite mass" in last
+
+
+async def test_measured_figures_stand_beside_the_estimate_they_replace(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path, MEASURED))
+    async with running.run_test(size=(80, 40)):
+        await on_opening(running, "end")
+        screen = left(await after(running, "backspace"))
+        assert "measured, beside the estimate it replaces" in screen
+        assert re.search(r"measured: 16,400 lbf, source: trial drops", screen)
+        assert re.search(r"estimate: [\d,]+ lbf, \d+\.\d % too (low|high)", screen)
+
+
+async def test_missing_data_are_named_and_the_other_lines_stand(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path, HALF))
+    async with running.run_test(size=(80, 40)):
+        screen = await on_opening(running, "end")
+        screen = left(screen) + shown("\n".join(line[41:] for line in screen.splitlines()))
+        assert "No curve" in screen
+        assert "data missing: item 3 (Lashings and legs)" in screen
+        assert "true airspeed at" in screen
+        assert "no value" in screen
+        assert "1 moved" in await after(running, "right")
+
+
+async def test_a_load_that_lands_first_says_so_and_has_no_load_factor(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path, WARM, ('release_height = "1,250 ft', 'release_height = "220 ft')))
+    async with running.run_test(size=(80, 24)):
+        screen = shown(await on_opening(running, "end", "backspace"))
+        assert "load factor: lands before it is open" in screen
+        assert "margin" not in screen
+        assert "FAIL" not in screen
+
+
+async def test_stages_and_rows_are_told_apart(tmp_path: Path) -> None:
+    for name, words in ((REEFED, "filling 2"), (TWO_ROWS, "row 2 (main)")):
+        running = running_on(copied(tmp_path, name))
+        async with running.run_test(size=(100, 60)):
+            await on_opening(running)
+            listed = opening(running)._listed
+            assert any(words in one.head for one in listed)
+            assert {"stage 1, drag ratio", "row 1, diameter D0"} & {one.name for one in opening(running)._moves.inputs}
+
+
+async def test_hostile_names_stay_text(tmp_path: Path) -> None:
+    rig = copied(
+        tmp_path, WARM,
+        ('name = "Borehole pump, plateau"', f'name = "[/red][s] é\u0301\u0301\u0301 漢字 [N] {"long " * 30}on"'),
+        ('name = "front left"', 'name = "[/][bold]漢字漢字漢字漢字 left"'),
+    )  # fmt: skip
+    running = running_on(rig)
+    async with running.run_test(size=(60, 20)):
+        screen = await on_opening(running, "end")
+        assert "[/red][s]" in screen
+        assert "line 20 of 20" in screen
+        await press(running, "escape")
+        assert "[/][bold]" in await after(running, "h")
+
+
+async def test_a_rig_that_cannot_be_read_says_why(tmp_path: Path) -> None:
+    rig = copied(tmp_path)
+    running = running_on(rig)
+    async with running.run_test(size=(80, 24)):
+        await settled(running)
+        rig.write_text("format = 1\n[rig\n", encoding="utf-8")
+        screen = await after(running, "o")
+        assert "This rig can't be read" in screen
+        assert "05-pump-warm.toml:2:notTOML" in re.sub(r"\s", "", screen)
+        assert "No input can be moved." in await after(running, "right")
+        assert "Nothing is moved" in await after(running, "k")
+
+
+async def test_a_changed_file_puts_moved_inputs_back_and_an_equal_one_does_not(tmp_path: Path) -> None:
+    rig = copied(tmp_path)
+    running = running_on(rig)
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "right")
+        running.check([rig])
+        assert "1 moved" in await settled(running)
+        rig.write_text(rig.read_text(encoding="utf-8").replace('"130 kt', '"125 kt'), encoding="utf-8")
+        running.check([rig])
+        screen = await settled(running)
+        assert "the moved inputs are put back" in screen
+        assert "1 moved" not in screen
+        assert "125 kt" in screen
+
+
+async def test_ascii_says_the_same_without_another_glyph(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path), ascii_only=True)
+    async with running.run_test(size=(80, 24)):
+        assert (await on_opening(running, "right")).isascii()
+        wide = await after(running, "z")
+        assert wide.isascii()
+        assert "*" in wide
+        assert (await after(running, "g")).isascii()
+        assert (await after(running, "escape", "h")).isascii()
+
+
+async def test_without_colour_no_cell_of_the_opening_has_one(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setenv("NO_COLOR", "1")
+    running = running_on(copied(tmp_path), colour=False)
+    async with running.run_test(size=(80, 24)):
+        screen = await on_opening(running, "right")
+        assert "moved, file" in screen
+        for strip in running.screen._compositor.render_strips():
+            for segment in strip:
+                if segment.style is not None and segment.text.strip():
+                    for colour in (segment.style.color, segment.style.bgcolor):
+                        assert colour is None or colour.is_default, segment
+
+
+async def test_the_moved_rig_goes_to_a_new_file_with_its_comments(tmp_path: Path) -> None:
+    rig = copied(tmp_path)
+    before = rig.read_text(encoding="utf-8")
+    running = running_on(rig)
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "down", "right", "k")
+        assert "new rig file: 05-pump-warm-moved.toml" in text(running)
+        screen = shown(await after(running, "enter"))
+        assert "Written to the new file" in screen
+        assert "05-pump-warm.toml is as it was" in screen
+        assert "new rig file:" not in screen
+    written = (tmp_path / "05-pump-warm-moved.toml").read_text(encoding="utf-8")
+    assert rig.read_text(encoding="utf-8") == before
+    changed = [(old, new) for old, new in zip(before.splitlines(), written.splitlines(), strict=True) if old != new]
+    assert len(changed) == 1
+    assert changed[0][0].startswith('airspeed = "130 kt')
+    assert changed[0][1].startswith('airspeed = "131 kt')
+
+
+async def test_no_file_is_ever_written_over(tmp_path: Path) -> None:
+    rig = copied(tmp_path)
+    before = rig.read_text(encoding="utf-8")
+    other = tmp_path / "05-pump-warm-moved.toml"
+    other.write_text("mine", encoding="utf-8")
+    running = running_on(rig)
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "right", "k")
+        screen = shown(await after(running, "enter"))
+        assert "NOT WRITTEN: there is a file 05-pump-warm-moved.toml already" in screen
+        assert "new rig file:" in screen
+        field = running.screen.query_one("#field")
+        for name, words in (
+            (rig.name, "NOT WRITTEN: there is a file 05-pump-warm.toml already"),
+            ("no such folder/a.toml", "NOT WRITTEN: No such file or directory"),
+            ("", "A file needs a name."),
+            ("a.record.toml", "kept for records"),
+        ):
+            field.value = name  # type: ignore[attr-defined]
+            assert words in shown(await after(running, "enter"))
+        screen = await after(running, "escape")
+        assert "Dropped; nothing was written." in screen
+        assert "new rig file:" not in screen
+    assert other.read_text(encoding="utf-8") == "mine"
+    assert rig.read_text(encoding="utf-8") == before
+    assert sorted(path.name for path in tmp_path.iterdir()) == ["05-pump-warm-moved.toml", rig.name, "limits"]
+
+
+async def test_a_typed_name_is_no_command(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running, "right", "k")
+        running.screen.query_one("#field").value = ""  # type: ignore[attr-defined]
+        await press(running, "z", "0", "g", "u", "enter")
+        await settled(running)
+    assert (tmp_path / "z0gu.toml").exists()
+
+
+async def test_while_numbers_are_on_their_way_the_screen_says_so(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path))
+    async with running.run_test(size=(80, 24)):
+        await on_opening(running)
+        screen = opening(running)
+        numbers = Held(screen._openings)
+        screen._openings = numbers
+        await press(running, "right", "right")
+        assert "calculating" in text(running).splitlines()[0]
+        assert "2,124 lb" in text(running)
+        assert "peak 15,846 lbf" in text(running)
+        await press(running, "right", "space", "g", "g", "g")
+        assert "line 2 of 20" in text(running)
+        numbers.go.set()
+        done = shown(await settled(running))
+        assert "calculating" not in done
+        assert "2,144 lb moved" in done
+        assert "peak 16,298 lbf" in done
+        assert numbers.asked[-1] == pytest.approx(2144 * 0.45359237)
+        assert len(numbers.asked) == 2
