@@ -14,7 +14,7 @@ from model.checks.step import Step, bound_in_unit, judge
 from model.rig import digest, record
 from model.rig.entry import Entry
 from model.rig.errors import InputError, InputProblem
-from model.rig.limits import Bounds, LimitSet, resolve
+from model.rig.limits import Bounds, LimitFile, LimitSet, resolve
 from model.rig.reading import Loaded, load
 from model.rig.rig import TABLES
 from model.rig.standing import standing
@@ -58,12 +58,13 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
     except InputError as error:
         problems += error.problems
     problems += verify(rig_file)
+    steps = registry.steps(rig_file.rig)
+    problems += _taken_keys(limits, {step.key for step in steps})
     if problems:
         raise InputError(problems)
     case = Case(rig_file.rig, limits.limits if limits else None, rulings)
     limits_raw = limits.raw if limits else None
     standings = standing(entries, rig_file.raw, limits_raw)
-    steps = registry.steps(rig_file.rig)
     findings = [judge(step, case, rulings.get(step.limited_by, Ruling())) for step in steps]
     if limits is not None:
         findings += [inspected.find(one, standings.answers.get(one.key)) for one in limits.limits.inspection]
@@ -87,6 +88,17 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         details=case,
         content=(rig_file.raw, limits_raw),
     )
+
+
+def _taken_keys(limits: LimitFile | None, computed: set[str]) -> list[InputProblem]:
+    """Inspections with the key of a step computed for a row of this rig; those of fixed steps are refused before."""
+    if limits is None:
+        return []
+    return [
+        limits.problem(("inspection", i, "key"), f'"{one.key}"', "a key that no computed step of the rig has")
+        for i, one in enumerate(limits.limits.inspection)
+        if one.key in computed and registry.dimension_of(one.key) is None
+    ]
 
 
 def _notes(limits: LimitSet | None) -> tuple[str, ...]:
