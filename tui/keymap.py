@@ -43,7 +43,7 @@ def read_keys(path: Path) -> Keys:
         reason = getattr(error, "strerror", None) or "not UTF-8 text"
         raise KeymapError(f"{path.name}: {reason}; the usual keys hold") from error
     # Read here, since most users have no such file and the parser costs time at the start.
-    import tomllib  # noqa: PLC0415
+    import tomllib
 
     try:
         found = tomllib.loads(text)

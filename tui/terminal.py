@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import os
-import shutil
 import sys
 from collections.abc import Mapping
 
@@ -55,9 +54,3 @@ def too_small(columns: int, rows: int) -> str | None:
         f"This window is {columns} x {rows}; rigslate needs {LEAST_COLUMNS} x {LEAST_ROWS}. "
         "Make it larger, or leave with ctrl+q and use rigslate check."
     )
-
-
-def size() -> tuple[int, int]:
-    """Columns and rows of the terminal."""
-    found = shutil.get_terminal_size()
-    return found.columns, found.lines

@@ -46,8 +46,9 @@ def head(folder: str, entries: Sequence[Entry], left: int, cells: int, chars: Ch
 def column_heads(cells: int, chars: Charset) -> Row:
     """The heads of the columns."""
     name, verdict, worst, signed = columns(cells)
-    texts = (fill("rig", name, chars), fill("verdict", verdict, chars), fill("least margin" if worst > 12 else "margin", worst, chars))
-    return row(Span("  " + " ".join((*texts, fill("signed", signed, chars))), "dim"))
+    margin = "least margin" if worst > 12 else "margin"
+    heads = zip(("rig", "verdict", margin, "signed"), (name, verdict, worst, signed), strict=True)
+    return row(Span("  " + " ".join(fill(word, room, chars) for word, room in heads), "dim"))
 
 
 def shelf_row(entry: Entry, *, here: bool, under_way: bool, cells: int, chars: Charset) -> Row:
