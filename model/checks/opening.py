@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, need
 from model.checks.rows import CanopyRow
@@ -12,7 +14,11 @@ from model.physics import balance, canopy, strength
 
 def _load_factor(case: Case) -> Outcome:
     result = derive(canopy.load_factor, case.forces.opening, case.masses.falling, unit="g")
-    return _outcome(case, result)
+    outcome = _outcome(case, result)
+    if any(case.forces.measured(one) for one in case.rows):
+        return outcome
+    plain = canopy.load_factor(case.forces.plain().value, case.masses.falling.value)
+    return replace(outcome, notes=(f"(without the opening coefficient {float(plain):.4g} g)", *outcome.notes))
 
 
 def _outcome(case: Case, result: Term, measured: bool | None = None) -> Outcome:

@@ -404,3 +404,10 @@ def test_drift_needs_a_wind_and_is_negative_against_it(tmp_path: Path) -> None:
     headwind = findings(tmp_path, lambda raw: raw["drop"].update(surface_wind="-12 m/s"))["descent.drift"]
     assert headwind.value is not None
     assert headwind.value < 0
+
+
+def test_the_load_factor_without_the_opening_coefficient_stands_in_brackets(tmp_path: Path) -> None:
+    plain = max(float(one.opening_force_plain.max()) for one in flights(by_hand())) / (900 * G0)
+    step = findings(tmp_path)["opening.load_factor"]
+    assert f"(without the opening coefficient {plain:.4g} g)" in step.notes
+    assert step.value == pytest.approx(plain * 1.7, rel=1e-3)
