@@ -78,7 +78,7 @@ COMMANDS: tuple[Command, ...] = (
     Command("steps.load_path", ("h",), "Load path", "Shows what hangs on what: every part with its load, strength and"
             " factor, the weakest marked.", (STEPS,), "Steps", "load_path"),
     Command("opening.next", ("space", "enter"), "Next line", "Opens the next line.",
-            (OPENING,), "Opening", "next_line(1)", 1, "next line"),
+            (OPENING,), "Opening", "next_line(1)", 1, "next"),
     Command("opening.previous", ("backspace",), "Line before", "Opens the line before.",
             (OPENING,), "Opening", "next_line(-1)"),
     Command("opening.first", ("home",), "First line", "Opens the first line.", (OPENING,), "Opening", "edge(-1)"),

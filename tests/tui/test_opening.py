@@ -80,7 +80,7 @@ async def test_every_line_has_a_value_and_says_where_it_comes_from(tmp_path: Pat
         for number in range(len(listed)):
             screen = shown(text(running))
             assert f"line {number + 1} of {len(listed)}" in screen
-            assert re.search(r"source: |from |by definition|least and largest|measured: |rig file|file", screen)
+            assert re.search(r"source: |by definition|least and largest of|measured: |exit\.|drop\.|platform\.", screen)
             await after(running, "space")
 
 
@@ -391,3 +391,14 @@ async def test_while_numbers_are_on_their_way_the_screen_says_so(tmp_path: Path)
         assert "peak 16,298 lbf" in done
         assert numbers.asked[-1] == pytest.approx(2144 * 0.45359237)
         assert len(numbers.asked) == 2
+
+
+async def test_names_of_inputs_are_whole_on_a_small_screen(tmp_path: Path) -> None:
+    running = running_on(copied(tmp_path, REEFED))
+    async with running.run_test(size=(60, 20)):
+        await on_opening(running)
+        for one in opening(running)._moves.inputs:
+            screen = await after(running, "right")
+            assert f"▸ {one.name} " in screen
+            assert re.search(rf"▸ {re.escape(one.name)} +\S.* file \S", screen)
+            await after(running, "left", "down")

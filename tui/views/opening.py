@@ -202,9 +202,11 @@ def _trust_said(shot: Shot) -> Iterator[Said]:
 
 def moved_row(name: str, now: str, filed: str, *, here: bool, moved: bool, cells: int, chars: Charset) -> Row:
     """One input: its name, where it stands, and where it stands in the file if that is elsewhere."""
-    value = VALUE
-    room = max(cells - 2 - 2 * value - 10, 10)
+    broad = cells > _BROAD + VALUE
+    value, tail = (VALUE, 2 * VALUE) if broad else (10, 15)
+    room = max(cells - 3 - value - tail, 10)
     tone: Tone = "title" if here else "text"
     start = Span(f"{chars.here if here else ' '} {fill(chars.clean(name), room, chars)} ", tone)
-    shown = Span(fill(chars.clean(now), value, chars), tone if not moved else "key")
-    return row(start, shown, Span(f" moved, file {chars.clean(filed)}" if moved else " as in the file", "dim"))
+    shown = Span(fill(chars.clean(now), value, chars), "key" if moved else tone)
+    said = f"{'moved, ' if broad else ''}file {chars.clean(filed)}" if moved else "as in the file" if broad else ""
+    return row(start, shown, Span(f" {said}", "dim"))
