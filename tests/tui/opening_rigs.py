@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import shutil
 from pathlib import Path
 
@@ -47,3 +48,8 @@ def opening(running: RigslateApp) -> OpeningScreen:
     screen = running.front
     assert isinstance(screen, OpeningScreen)
     return screen
+
+
+def shown(screen: str) -> str:
+    """A screen's words without its line breaks."""
+    return re.sub(r"\s+", " ", screen)
