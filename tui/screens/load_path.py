@@ -9,14 +9,13 @@ from textual.message import Message
 
 from model.quantity import UnitSystem
 from model.report.load_path import load_path_lines
+from tui.caution import CAUTION
 from tui.commands import LOAD_PATH
 from tui.rows import EMPTY, Row, Rows, Span, ends, paragraph, row
 from tui.screens.base import bindings
 from tui.screens.text import TextScreen
 from tui.views.load_path import load_path_rows
 from tui.workers import unexpected
-
-CAUTION = "An estimate: local rules, the technical manual and licensed riggers go first."
 
 
 @dataclass

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from tui.caution import CAUTION
 from tui.glyphs import Charset, clip, clip_front, fill, fill_left
 from tui.rows import Row, Span, Tone, ends, paragraph, row
 from tui.shelf import CANNOT_READ, Entry
@@ -128,7 +129,7 @@ def detail(entry: Entry | None, *, under_way: bool, cells: int, chars: Charset) 
         words = "1 answer was given before a change and is STALE" if count == 1 else (
             f"{count} answers were given before a change and are STALE")  # fmt: skip
         rows += paragraph(words, cells, "note")
-    return rows
+    return [*rows, *paragraph(CAUTION, cells, "dim")]
 
 
 def _clipped(lead: str, text: str, cells: int, chars: Charset) -> list[str]:

@@ -10,6 +10,7 @@ from model.physics.formula import Formula
 from model.report import wording
 from model.report.working import term_value, with_numbers
 from tui.answering import Draft
+from tui.caution import CAUTION
 from tui.glyphs import Charset, clip, fill, fill_left, width
 from tui.rows import EMPTY, Row, Span, ends, indented, paragraph, row, row_width
 from tui.services import Remedy
@@ -126,7 +127,7 @@ def _computed(
     rows += _because(finding, system, cells, chars)
     for note in finding.notes:
         rows += paragraph(chars.clean(note), cells, "dim", "  ")
-    return rows
+    return [*rows, EMPTY, *paragraph(CAUTION, cells, "note")]
 
 
 def _cautions(cautions: Sequence[str], cells: int, chars: Charset) -> list[Row]:
