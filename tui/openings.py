@@ -97,15 +97,10 @@ class ModelOpenings:
     def shot(self, start: Start, changes: Changes, system: UnitSystem) -> Shot:
         """Work the opening out with some inputs moved."""
         from model.checks.case import Case
-        from model.checks.inputs import verify
-        from model.study.moving import moved
 
         if not changes:
             return _shot(start.checklist, system)
-        loaded = moved(start.loaded, changes, {one.loc: one for one in start.inputs})
-        problems = verify(loaded.rig)
-        if problems:
-            raise CannotReadError([f"{problem.path}: {problem.message}" for problem in problems])
+        loaded = _moved(start, changes)
         case = Case(loaded.rig.rig, loaded.limits.limits if loaded.limits else None)
         return _shot(replace(start.checklist, details=case), system)
 
@@ -114,11 +109,26 @@ class ModelOpenings:
         from model.study.moving import write_moved
 
         try:
+            _moved(start, changes)
             write_moved(start.loaded, changes, {one.loc: one for one in start.inputs}, path)
+        except CannotReadError as error:
+            raise NotWrittenError(f"these values can't be ({'; '.join(error.problems)})") from error
         except FileExistsError as error:
             raise NotWrittenError(f"there is a file {path.name} already, and no file is ever written over") from error
         except OSError as error:
             raise NotWrittenError(f"{error.strerror or error} ({path})") from error
+
+
+def _moved(start: Start, changes: Changes) -> Loaded:
+    """The rig with its moved inputs, or `CannotReadError` where they contradict each other."""
+    from model.checks.inputs import verify
+    from model.study.moving import moved
+
+    loaded = moved(start.loaded, changes, {one.loc: one for one in start.inputs})
+    problems = verify(loaded.rig)
+    if problems:
+        raise CannotReadError([f"{problem.path}: {problem.message}" for problem in problems])
+    return loaded
 
 
 def _shot(checklist: Checklist, system: UnitSystem) -> Shot:

@@ -161,7 +161,8 @@ async def test_contradicting_values_give_a_reason_and_no_number(tmp_path: Path) 
         assert "No result with these values" in screen
         assert "dew" in screen
         assert "lbf" not in screen
-        assert "Nothing" not in await after(running, "k")
+        assert "NOT WRITTEN: these values can't be" in shown(await after(running, "k", "enter"))
+        assert not (tmp_path / "05-pump-warm-moved.toml").exists()
         await after(running, "escape")
         assert "line 1 of 20" in await after(running, "0")
 
