@@ -12,7 +12,6 @@ from textual import events
 from textual.app import App
 from textual.binding import Binding, BindingType
 from textual.screen import Screen
-from textual.theme import Theme
 
 from tui import terminal
 from tui.answering import Draft, RepeatGuard
@@ -24,16 +23,14 @@ from tui.messages import Checked, FilesChanged, Remedied, RigsFound, RigsGlanced
 from tui.screens.base import BaseScreen
 from tui.services import Found, Services
 from tui.shelf import Shelf
-from tui.tones import DARK_GROUND, LIGHT_GROUND, Look, look
+from tui.themes import DARK, LIGHT
+from tui.tones import Look, look
 from tui.workers import Workers
 
 if TYPE_CHECKING:
     from model.checks.finding import Checklist, Finding
     from model.quantity import UnitSystem
 
-_DARK = Theme("rigslate-dark", primary="#8fc4f0", foreground="#d8dcd6", background=DARK_GROUND, surface=DARK_GROUND)
-_LIGHT = Theme("rigslate-light", primary="#0b4f8a", foreground="#22282c", background=LIGHT_GROUND,
-               surface=LIGHT_GROUND, dark=False)  # fmt: skip
 WATCH = 1.0
 """Seconds between looks at the files."""
 
@@ -112,9 +109,9 @@ class RigslateApp(App[int], inherit_bindings=False):
     def on_mount(self) -> None:
         """Begin to read the rigs."""
         self.title = "rigslate"
-        self.register_theme(_DARK)
-        self.register_theme(_LIGHT)
-        self.theme = _DARK.name
+        self.register_theme(DARK)
+        self.register_theme(LIGHT)
+        self.theme = DARK.name
         self.set_keymap({name: ",".join(keys) for name, keys in self.keys.own.items()})
         if self._greeting:
             self.front.say(self._greeting)
@@ -281,7 +278,7 @@ class RigslateApp(App[int], inherit_bindings=False):
             return
         self._dark = not self._dark
         self._look = look(dark=self._dark, colour=True)
-        self.theme = (_DARK if self._dark else _LIGHT).name
+        self.theme = (DARK if self._dark else LIGHT).name
         self.front.say("Dark theme." if self._dark else "Light theme.", "dim")
 
     def action_how_to_leave(self) -> None:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from itertools import groupby
-from textwrap import wrap
+from textwrap import shorten, wrap
 
 from model.checks.finding import COMPUTED_ALONE, Checklist, Finding, Kind, Verdict
 from model.checks.registry import group_title
@@ -79,3 +79,11 @@ def brief_line(checklist: Checklist) -> str:
 def _signed_percent(finding: Finding) -> str:
     margin = finding.margin or 0.0
     return ("-" if margin < 0 else "") + wording.percent(margin)
+
+
+def summary_line(checklist: Checklist) -> str:
+    """Verdict, file and the steps that fail, for the end of a long list; no wider than the page."""
+    failed = [one.key for one in checklist.findings if one.verdict is Verdict.FAIL]
+    opened = checklist.count(Verdict.OPEN)
+    said = f"fails {', '.join(failed)}" if failed else f"{opened} open" if opened else "nothing open"
+    return shorten(f"{checklist.verdict}  {checklist.file}: {said}", WIDTH, placeholder=" ...")

@@ -87,6 +87,16 @@ def _print_json(results: Sequence[Result], elsewhere: Sequence[InputProblem]) ->
     print(document(rigs))
 
 
+def _print_summary(lists: Sequence[Checklist]) -> None:
+    """What each of several rigs came to, a line each, so that it need not be looked for above."""
+    from model.report.plain import summary_line
+
+    if len(lists) > 1:
+        print("\n" + "=" * 78 + "\n")
+        for one in lists:
+            print(summary_line(one))
+
+
 def _print_text(results: Sequence[Result], options: argparse.Namespace) -> None:
     from textwrap import fill
 
@@ -106,5 +116,6 @@ def _print_text(results: Sequence[Result], options: argparse.Namespace) -> None:
         print(checklist_text(found, UnitSystem(options.units)))
         first = False
     if not first:
+        _print_summary([found for _, found in results if isinstance(found, Checklist)])
         print("\n" + fill(CAUTION, 78))
         print(f"full screen: rigslate {options.paths[0]}")

@@ -89,7 +89,7 @@ def margin_bar(
         bar[ticks[maximum] + 1 : here + 1] = [Span(chars.over, "fail")] * (here - ticks[maximum])
     if minimum is not None and value < minimum:
         # Filled leftwards from zero, the value's own cell is past the limit; filled rightwards it is short of it.
-        start = here if scale.cell(scale.origin, inner) > here else here + 1
+        start = max(here if scale.cell(scale.origin, inner) > here else here + 1, 0)
         bar[start : ticks[minimum]] = [Span(chars.over, "fail")] * (ticks[minimum] - start)
     for tick in ticks.values():
         bar[tick] = Span(chars.limit, "title")

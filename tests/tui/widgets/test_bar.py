@@ -30,6 +30,11 @@ def test_a_value_short_of_the_least_is_crossed_up_to_the_tick() -> None:
     assert "min 2.5 ft/s" in labels
 
 
+def test_a_value_at_the_end_of_a_short_bar_stays_within_it() -> None:
+    rows = margin_bar(0.0, 0.125, 1.0, 12, PLAIN, speed)
+    assert row_text(rows[0]) == "[X|......|.]"
+
+
 def test_a_value_between_two_bounds_has_no_cross() -> None:
     bar, labels = drawn(1.2, -4, 6)
     assert "X" not in bar
