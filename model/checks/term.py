@@ -55,6 +55,7 @@ class Term:
     inputs: tuple[Term, ...] = ()
     notes: tuple[str, ...] = ()
     tolerance: float = 0.0
+    relative: bool = False
     cautions: tuple[str, ...] = ()
     from_file: bool = False
 
@@ -75,7 +76,7 @@ def given(quantity: Quantity, symbol: str, meaning: str, origin: str) -> Term:
         str(quantity.dimension),
         quantity.unit,
         origin,
-        tolerance=quantity.tolerance,
+        tolerance=quantity.tolerance, relative=quantity.relative,
         from_file=True,
     )
 

@@ -7,7 +7,6 @@ show that the last entries were cut off, or that the whole record was written an
 import contextlib
 import os
 import sys
-import tempfile
 from collections.abc import Iterable, Iterator, Sequence
 from datetime import datetime
 from pathlib import Path
@@ -18,6 +17,7 @@ from model.rig.entry import FIELDS, Entry, Record
 from model.rig.errors import whole_file
 from model.rig.source import LARGEST_FILE, Fault, parse_toml, read_bytes, shown_path
 from model.rig.validate import validate
+from model.rig.whole import write_whole
 
 _ESCAPES = {"\\": "\\\\", '"': '\\"', "\n": "\\n", "\r": "\\r", "\t": "\\t"}
 
@@ -165,42 +165,9 @@ def _one_writer(folder: Path) -> Iterator[None]:
 
 def _replace(path: Path, new: bytes, old: bytes | None) -> None:
     """Put new bytes in the place of the old ones, all or nothing."""
-    handle, name = tempfile.mkstemp(prefix=f".{path.name[:100]}.", dir=path.parent)
-    try:
-        with open(handle, "wb") as stream:
-            stream.write(new)
-            stream.flush()
-            os.fsync(stream.fileno())
-        os.chmod(name, _mode(path))
+
+    def unchanged() -> None:
         if (read_bytes(path) if os.path.lexists(path) else None) != old:
             raise whole_file(shown_path(path), "another program wrote this record meanwhile: nothing was written")
-        os.replace(name, path)
-    except BaseException:
-        os.unlink(name)
-        raise
-    _flush_folder(path.parent)
 
-
-def _mode(path: Path) -> int:
-    """Permissions of the file in place, or of a new one."""
-    if path.exists():
-        return path.stat().st_mode & 0o777
-    mask = os.umask(0)
-    os.umask(mask)
-    return 0o666 & ~mask
-
-
-def _flush_folder(folder: Path) -> None:
-    """Make the new name last; not every system can open a folder for it."""
-    try:
-        handle = os.open(folder, os.O_RDONLY)
-    except OSError:
-        return
-    try:
-        os.fsync(handle)
-    except OSError:
-        return
-    finally:
-        os.close(handle)
-
-
+    write_whole(path, new, ready=unchanged)

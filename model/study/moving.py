@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
 from pathlib import Path
@@ -11,7 +12,7 @@ from model.checks.case import Case
 from model.checks.day import Day
 from model.checks.missing import Missing
 from model.checks.term import Term
-from model.quantity import Dimension, Quantity, UnitSystem, show, unit_for
+from model.quantity import FEET_INCHES, Dimension, Quantity, UnitSystem, show, show_difference, unit_for
 from model.rig.locate import Loc
 from model.rig.reading import Loaded
 from model.rig.rig import Rig
@@ -23,7 +24,8 @@ SMALL = 0.01
 class Input:
     """One input that can be moved: where it lies in the rig file, its value now, and how it steps.
 
-    ``step`` is in SI; ``whole`` marks a count.
+    ``step`` is in SI; ``whole`` marks a count. ``tolerance`` is that of the field in SI, or 0; ``relative``
+    says whether it was written as a share.
     """
 
     name: str
@@ -35,6 +37,8 @@ class Input:
     least: float
     most: float
     whole: bool = False
+    tolerance: float = 0.0
+    relative: bool = False
 
     def text(self, value: float, system: UnitSystem = UnitSystem.WRITTEN) -> str:
         """A value of this input in words."""
@@ -127,7 +131,10 @@ def _input(
         return None
     dimension = Dimension(found.dimension)
     size = step or _round_step(abs(found.value) * SMALL)
-    return Input(name, loc, found.value, dimension, found.unit or "", size, least, most, whole)
+    tolerance = 0.0 if whole else found.tolerance
+    return Input(
+        name, loc, found.value, dimension, found.unit or "", size, least, most, whole, tolerance, found.relative
+    )
 
 
 def _round_step(size: float) -> float:
@@ -141,13 +148,17 @@ def _round_step(size: float) -> float:
 
 
 def moved(loaded: Loaded, changes: Mapping[Loc, float], chosen: Mapping[Loc, Input]) -> Loaded:
-    """The same rig with some inputs at other values."""
+    """The same rig with some inputs at other values; a tolerance stays as wide as it was, or the same share."""
     rig: Rig = loaded.rig.rig
     for loc, value in changes.items():
         one = chosen[loc]
-        new: Any = round(value) if one.whole else Quantity(value, one.dimension, one.unit, text=_written(one, value))
-        rig = _with(rig, loc, new)
+        rig = _with(rig, loc, round(value) if one.whole else _quantity(one, value))
     return Loaded(replace(loaded.rig, rig=rig), loaded.limits)
+
+
+def _quantity(one: Input, value: float) -> Quantity:
+    tolerance = one.tolerance * abs(value / one.value) if one.relative and one.value else one.tolerance
+    return Quantity(value, one.dimension, one.unit, tolerance, _written(one, value), one.relative)
 
 
 def _with(model: Any, loc: Loc, value: Any) -> Any:
@@ -161,8 +172,15 @@ def _with(model: Any, loc: Loc, value: Any) -> Any:
 
 
 def _written(one: Input, value: float) -> str:
+    """A moved value as it is written in a file, with the tolerance it had."""
     unit = one.unit or unit_for(one.dimension, UnitSystem.SI, None, value)
-    return show(value, one.dimension, unit, digits=6)
+    text = show(value, one.dimension, unit, digits=6)
+    if not one.tolerance:
+        return text
+    if one.relative and one.value:
+        return f"{text} ± {show(one.tolerance / abs(one.value) * 100, Dimension.NUMBER, '', digits=6)} %"
+    plain = "in" if unit == FEET_INCHES else unit
+    return f"{text} ± {show_difference(one.tolerance, one.dimension, plain, digits=6)}"
 
 
 def write_moved(loaded: Loaded, changes: Mapping[Loc, float], chosen: Mapping[Loc, Input], path: Path) -> None:
@@ -170,27 +188,26 @@ def write_moved(loaded: Loaded, changes: Mapping[Loc, float], chosen: Mapping[Lo
 
     Raises:
         FileExistsError: If there is a file of that name.
-        OSError: If it cannot be written.
+        OSError: If it cannot be written; no half of it is left.
     """
-    import os
-
     import tomlkit
+
+    from model.rig.whole import write_whole
 
     document: Any = tomlkit.parse(loaded.rig.text)
     for loc, value in changes.items():
         table = document
         for key in loc[:-1]:
             table = table[key]
-        one = chosen[loc]
-        if one.whole:
-            table[str(loc[-1])] = round(value)
-        elif one.dimension is Dimension.NUMBER:
-            table[str(loc[-1])] = float(_written(one, value).replace(",", ""))
-        else:
-            table[str(loc[-1])] = _written(one, value)
+        table[str(loc[-1])] = _field(chosen[loc], value)
     if path.parent.resolve() != loaded.rig.path.parent.resolve() and loaded.rig.limits_path is not None:
         document["limits"] = Path(os.path.relpath(loaded.rig.limits_path.resolve(), path.parent.resolve())).as_posix()
-    with path.open("x", encoding="utf-8", newline="\n") as file:
-        file.write(tomlkit.dumps(document))
-        file.flush()
-        os.fsync(file.fileno())
+    write_whole(path, tomlkit.dumps(document).encode("utf-8"), fresh=True)
+
+
+def _field(one: Input, value: float) -> int | float | str:
+    """What stands in the file for a moved input; a plain number without a tolerance stays a plain number."""
+    if one.whole:
+        return round(value)
+    text = _written(one, value)
+    return float(text.replace(",", "")) if one.dimension is Dimension.NUMBER and not one.tolerance else text

@@ -6,7 +6,6 @@ import argparse
 import os
 import stat
 import sys
-import tempfile
 from collections.abc import Callable, Iterable
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -18,6 +17,7 @@ from model.rig.errors import InputError, InputProblem
 from model.rig.reading import find_rigs
 from model.rig.record import record_path
 from model.rig.source import shown_path
+from model.rig.whole import write_whole
 from tui.command_line import status
 
 if TYPE_CHECKING:
@@ -117,31 +117,10 @@ def _must_be_no_input(target: Path, checklists: Iterable[Checklist]) -> None:
 
 def _write_whole(target: Path, text: str) -> None:
     """Put the report in place in one step: a former one stands until the new one is complete."""
-    place = Path(os.path.realpath(target))
-    name = None
     try:
-        handle, name = tempfile.mkstemp(prefix=".report.", dir=place.parent)
-        with open(handle, "w", encoding="utf-8", newline="\n") as stream:
-            stream.write(text)
-            stream.flush()
-            os.fsync(stream.fileno())
-        os.chmod(name, _mode(place))
-        os.replace(name, place)
-        name = None
+        write_whole(Path(os.path.realpath(target)), text.encode("utf-8"))
     except OSError as error:
         raise _NotWritten(f"{shown_path(target)}: not written: {_why(error)}") from None
-    finally:
-        if name is not None:
-            os.unlink(name)
-
-
-def _mode(place: Path) -> int:
-    """Permissions of the file in place, or of a new one."""
-    if place.exists():
-        return stat.S_IMODE(place.stat().st_mode)
-    mask = os.umask(0)
-    os.umask(mask)
-    return 0o666 & ~mask
 
 
 def _why(error: OSError | ValueError) -> str:

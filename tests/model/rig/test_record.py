@@ -10,7 +10,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from model.rig import record
+from model.rig import whole
 from model.rig.digest import digest
 from model.rig.entry import Entry, draft
 from model.rig.errors import InputError
@@ -158,13 +158,13 @@ def test_nothing_is_appended_to_a_damaged_record(path: Path) -> None:
 
 
 def test_a_record_that_changes_meanwhile_is_left_alone(path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
-    whole_mode = record._mode
+    whole_mode = whole._mode
 
     def intrude(file: Path) -> int:
         file.write_bytes(file.read_bytes() + b"# from elsewhere\n")
         return whole_mode(file)
 
-    monkeypatch.setattr(record, "_mode", intrude)
+    monkeypatch.setattr(whole, "_mode", intrude)
     with pytest.raises(InputError, match="another program wrote this record meanwhile"):
         append(path, entry("remark", remark="more"))
     assert path.read_bytes().endswith(b"# from elsewhere\n")

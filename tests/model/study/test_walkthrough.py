@@ -103,6 +103,31 @@ def test_moving_an_input_is_the_same_as_writing_it_in_the_file(tmp_path):
     assert "# " in path.read_text(encoding="utf-8")
 
 
+def test_a_moved_input_keeps_its_tolerance(tmp_path):
+    loaded = load(RIGS / "05-pump-warm.toml")
+    chosen = {one.loc: one for one in inputs(Case(loaded.rig.rig, loaded.limits.limits))}
+    at = ("drop", "release_height")
+    assert loaded.rig.rig.drop.release_height.text == "1,250 ft ± 50 ft"
+    changes = {at: chosen[at].value * 2}
+    path = tmp_path / "moved.toml"
+    write_moved(loaded, changes, chosen, path)
+    height = load(path).rig.rig.drop.release_height
+    assert height.text == "2,500 ft ± 50 ft"
+    assert moved(loaded, changes, chosen).rig.rig.drop.release_height.tolerance == height.tolerance
+
+
+def test_a_full_disk_leaves_no_half_file(tmp_path, monkeypatch):
+    def full(_):
+        raise OSError(28, "No space left on device")
+
+    loaded = load(RIGS / "05-pump-warm.toml")
+    chosen = {one.loc: one for one in inputs(Case(loaded.rig.rig, loaded.limits.limits))}
+    monkeypatch.setattr("os.fsync", full)
+    with pytest.raises(OSError, match="No space"):
+        write_moved(loaded, {("drop", "airspeed"): 60.0}, chosen, tmp_path / "new.toml")
+    assert list(tmp_path.iterdir()) == []
+
+
 def test_the_old_file_stays_and_no_file_is_overwritten(tmp_path):
     loaded = load(RIGS / "05-pump-warm.toml")
     before = loaded.rig.path.read_bytes()
