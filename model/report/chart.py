@@ -11,6 +11,7 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from itertools import groupby, pairwise
+from math import floor, log10
 from typing import Literal
 
 Point = tuple[float, float]
@@ -215,8 +216,17 @@ def short(number: float, limits: Iterable[Bound] = ()) -> str:
     """A number in four digits, or as many as it takes to stand on its own side of every limit."""
     bounds = list(limits)
     for digits in range(4, 17):
-        text = f"{number:,.{digits}g}"
+        text = _digits(number, digits)
         shown = float(text.replace(",", ""))
         if all(bound.is_broken_by(shown) == bound.is_broken_by(number) for bound in bounds):
             return text
     return f"{number!r}"
+
+
+def _digits(number: float, digits: int) -> str:
+    """A number in so many digits, without an exponent where its size is an everyday one."""
+    if number == 0 or not 1e-6 <= abs(number) < 1e15:
+        return f"{number:,.{digits}g}"
+    places = max(digits - 1 - floor(log10(abs(number))), 0)
+    text = f"{number:,.{places}f}"
+    return text.rstrip("0").rstrip(".") if "." in text else text

@@ -31,7 +31,7 @@ def load_path_lines(case: Case, system: UnitSystem, columns: int = 80) -> list[s
     lines.append(f"  {'part' if name else '':<{name}}{_numbers('load', 'strength', 'factor')}")
     for part in parts:
         lines += _part_lines(part, system, name, weak=least is part)
-    unknown = sum(part.factor is None for part in parts)
+    unknown = sum(part.factor is None and not part.fails for part in parts)
     lines.append("")
     if least is not None and least.factor is not None:
         lines.append(f"weakest of the parts known: {least.name}, factor {_factor(least)}")
@@ -47,7 +47,7 @@ def _numbers(*texts: str) -> str:
 def _part_lines(part: Part, system: UnitSystem, name: int, *, weak: bool) -> list[str]:
     mark = "> " if weak else "  "
     if part.factor is None or part.load is None or part.strength is None:
-        return [f"{mark}{part.name}", f"      OPEN  {part.missing}"]
+        return [f"{mark}{part.name}", f"      {'FAIL' if part.fails else 'OPEN'}  {part.missing}"]
     numbers = _numbers(term_value(part.load, system), term_value(part.strength, system), _factor(part))
     ending = f"  {WEAKEST}" if weak else ""
     if len(part.name) >= name:

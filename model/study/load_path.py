@@ -18,11 +18,15 @@ KEY = "load-path"
 
 @dataclass(frozen=True)
 class Part:
-    """One part of the load path; ``factor`` is strength over load, with both as its inputs."""
+    """One part of the load path; ``factor`` is strength over load, with both as its inputs.
+
+    Without one, ``missing`` says why, and ``fails`` whether the part fails for it or is open.
+    """
 
     name: str
     factor: Term | None
     missing: str = ""
+    fails: bool = False
 
     @property
     def strength(self) -> Term | None:
@@ -72,11 +76,13 @@ def _parts(name: str, factors: Callable[[], Sequence[Term]]) -> list[Part]:
         return [Part(one.meaning.removeprefix("strength over load, "), one) for one in factors()]
     except Missing as missing:
         return [Part(name, None, f"data missing: {missing}")]
-    except (CannotJudge, Failed) as reason:
+    except CannotJudge as reason:
         return [Part(name, None, str(reason))]
+    except Failed as reason:
+        return [Part(name, None, str(reason), fails=True)]
 
 
 def weakest(parts: Sequence[Part]) -> Part | None:
-    """The part that would give first; None while any part is unknown to hold."""
+    """The part that would give first, of those whose factor is known; None where none is."""
     known = [part for part in parts if part.factor is not None]
     return min(known, key=lambda part: part.factor.value if part.factor else 0.0, default=None)
