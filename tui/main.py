@@ -14,8 +14,6 @@ UNREADABLE, INTERRUPTED, PIPE_CLOSED = 2, 130, 141
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run rigslate and return its exit status."""
     words = list(sys.argv[1:] if arguments is None else arguments)
-    # The models take no plugins; looking for them costs more than reading a rig.
-    os.environ.setdefault("PYDANTIC_DISABLE_PLUGINS", "__all__")
     _plain_streams()
     try:
         status = _run(words)

@@ -11,6 +11,7 @@ from model.quantity import QuantityError
 from model.rig.fields import Format, Line, Note
 from model.rig.limits import Covers
 from model.rig.rule import FieldError, Rule, Strict, choice, described, required, rows
+from model.rig.schema import read
 
 _DIGEST = re.compile(r"[0-9a-f]{64}", re.ASCII)
 
@@ -106,7 +107,7 @@ def draft(**fields: Any) -> Entry:
         FieldError: a field that may not stand so, or fields that do not go together.
     """
     try:
-        entry = Entry.model_validate(fields)
+        entry = read(Entry, fields)
     except ValidationError as error:
         first = error.errors(include_url=False)[0]
         cause = first.get("ctx", {}).get("error")

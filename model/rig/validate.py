@@ -12,6 +12,7 @@ from model.quantity import QuantityError
 from model.rig.errors import MOST_PROBLEMS, InputError, InputProblem
 from model.rig.locate import Loc
 from model.rig.rule import LOST, Strict, described, nearest
+from model.rig.schema import read
 from model.rig.source import Fault, TomlFile
 
 M = TypeVar("M", bound=Strict)
@@ -42,7 +43,7 @@ def validate(file: TomlFile, kind: type[M], rules: Callable[[M, frozenset[str]],
     lost: set[str] = set()
     for _ in range(4):  # taking one mistake out may bring another to light, a few levels deep at most
         try:
-            model = kind.model_validate(raw)
+            model = read(kind, raw)
         except ValidationError as error:
             errors = error.errors(include_url=False, include_input=True)
             faults.extend(fault for item in errors if (fault := _fault(item, kind)) not in faults)
