@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 from functools import cached_property, lru_cache
 
 import numpy as np
@@ -74,7 +75,8 @@ class Hanging:
                 known(place[i], f"{axis}a", f"{axis} of the confluence point", "length", "suspension.apex", units[i])
                 for i, axis in enumerate("xyz")
             ]
-            return terms[0], terms[1], terms[2]
+            # Its height is what a rigger can change; x and y follow the centre of gravity.
+            return terms[0], terms[1], replace(terms[2], from_file=True)
         lengths = [
             given(
                 need(leg.length, f"suspension.apex, or {self.field(i, 'length')}"),
