@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 from datetime import datetime
 from enum import StrEnum
 from math import pi
-from typing import Any
+from typing import Any, NamedTuple
 
 from model.checks.term import Term
 from model.physics.formula import CONSTANTS
@@ -31,8 +31,7 @@ class Kind(StrEnum):
     INSPECTED = "inspected"
 
 
-@dataclass(frozen=True, slots=True)
-class StepUnit:
+class StepUnit(NamedTuple):
     """The unit in which a step's value, limit and record stand, with its size in SI."""
 
     text: str
@@ -58,8 +57,7 @@ STEP_UNITS = {
 }
 
 
-@dataclass(frozen=True, slots=True)
-class Limit:
+class Limit(NamedTuple):
     """A bound that a user set, in the step's unit, with its source. ``shown_in`` is the unit it was written in."""
 
     minimum: float | None
@@ -92,8 +90,7 @@ class Limit:
         return min(gap / size for gap, size in gaps)
 
 
-@dataclass(frozen=True)
-class Ruling:
+class Ruling(NamedTuple):
     """What the limit set says of a step: its limit, and whether it counts and needs a measured figure."""
 
     limit: Limit | None = None
@@ -102,8 +99,7 @@ class Ruling:
     source: str = ""
 
 
-@dataclass(frozen=True, slots=True)
-class Answer:
+class Answer(NamedTuple):
     """The standing answer of an inspected step."""
 
     answer: str
@@ -115,8 +111,7 @@ class Answer:
     stale: bool = False
 
 
-@dataclass(frozen=True, slots=True)
-class Inspection:
+class Inspection(NamedTuple):
     """What an inspected step asks, as the limit set writes it."""
 
     ask: str
@@ -166,8 +161,7 @@ class Finding:
         return f"{how.text}; {how.source}" if how.source else how.text
 
 
-@dataclass(frozen=True, slots=True)
-class Signature:
+class Signature(NamedTuple):
     """A signature of the record, and whether the content changed since."""
 
     who: str

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 from model.checks.case import Case
 from model.checks.missing import CannotJudge, need
 from model.checks.rows import CanopyRow
@@ -18,7 +16,7 @@ def _load_factor(case: Case) -> Outcome:
     if any(case.forces.measured(one) for one in case.rows):
         return outcome
     plain = canopy.load_factor(case.forces.plain().value, case.masses.falling.value)
-    return replace(outcome, notes=(f"(without the opening coefficient {float(plain):.4g} g)", *outcome.notes))
+    return outcome._replace(notes=(f"(without the opening coefficient {float(plain):.4g} g)", *outcome.notes))
 
 
 def _outcome(case: Case, result: Term, measured: bool | None = None) -> Outcome:

@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from functools import cached_property
+from typing import NamedTuple
 
 from model.checks.missing import Missing, need, row
 from model.checks.term import SAME, Procedure, Term, combine, derive, given, known, read
@@ -19,8 +19,7 @@ NEAR = 0.10
 """A measured figure is used within this share of its mass and speed."""
 
 
-@dataclass(frozen=True)
-class Filling:
+class Filling(NamedTuple):
     """One filling of a row: the terms the motion needs, and which of them are the handbook's."""
 
     number: int

@@ -3,8 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass, field, replace
 from math import isfinite, ulp
+from typing import NamedTuple
 
 from model.checks.case import Case
 from model.checks.finding import CLOSE, STEP_UNITS, Finding, Kind, Limit, Ruling, Verdict
@@ -15,8 +15,7 @@ from model.quantity import Quantity
 NO_NUMBER = "no number comes out of these data"
 
 
-@dataclass(frozen=True)
-class Row:
+class Row(NamedTuple):
     """One of several values that a step judges, each against limits of its own; ``lacks`` names the field for them."""
 
     result: Term
@@ -24,8 +23,7 @@ class Row:
     lacks: str
 
 
-@dataclass(frozen=True)
-class Outcome:
+class Outcome(NamedTuple):
     """What a computed step comes to before a limit is laid against it."""
 
     result: Term
@@ -43,14 +41,13 @@ class Outcome:
     """Where each row of the rig has limits of its own; the one that decides takes the place of ``result``."""
 
 
-@dataclass(frozen=True)
-class Step:
+class Step(NamedTuple):
     """One computed step. ``limit_key`` names the limits that hold for it where it is not the key itself."""
 
     key: str
     title: str
     unit: str | None
-    compute: Callable[[Case], Outcome] = field(repr=False)
+    compute: Callable[[Case], Outcome]
     for_information: bool = False
     limit_key: str = ""
     tables: tuple[str, ...] = ()
@@ -139,7 +136,7 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
         return _without_value(step, ruling, Verdict.OPEN, NO_NUMBER)
     if outcome.rows:
         row, opens = worst(outcome.rows, step.unit or "1", ruling)
-        outcome = replace(outcome, result=row.result, own_limits=row.own_limits, opens=opens)
+        outcome = outcome._replace(result=row.result, own_limits=row.own_limits, opens=opens)
     value = in_step_unit(outcome.result, step.unit or "1")
     limit = tighter([*outcome.own_limits, *([ruling.limit] if ruling.limit else [])])
     judged = limit is not None and isfinite(value) and not outcome.passes

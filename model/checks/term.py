@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
-from typing import Any
+from typing import Any, NamedTuple
 
 from model.checks.missing import need
 from model.physics.formula import Formula
@@ -21,8 +21,7 @@ US_UNITS = frozenset(
 )
 
 
-@dataclass(frozen=True)
-class Procedure:
+class Procedure(NamedTuple):
     """What leads to a term where no closed formula does: a sum, a largest value, the motion, a set of equations."""
 
     text: str

@@ -6,9 +6,9 @@ stack pushes with over the weight. Forces in N, areas in m2, lengths in m, speed
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from enum import StrEnum
 from math import ceil
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -214,8 +214,7 @@ class CushionFit(StrEnum):
     TOO_HARD_AND_THIN = "too hard: less area, with more layers"
 
 
-@dataclass(frozen=True, slots=True)
-class CushionAdvice:
+class CushionAdvice(NamedTuple):
     """What would make a stack fit.
 
     Attributes:

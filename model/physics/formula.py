@@ -11,7 +11,7 @@ from __future__ import annotations
 import inspect
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
-from typing import Generic, ParamSpec, TypeVar, cast
+from typing import Generic, NamedTuple, ParamSpec, TypeVar, cast
 
 P = ParamSpec("P")
 R = TypeVar("R")
@@ -20,8 +20,7 @@ CONSTANTS: Mapping[str, float] = {"g0": 9.80665, "pi": 3.141592653589793}
 """Symbols a text may use without naming them as arguments; SI."""
 
 
-@dataclass(frozen=True, slots=True)
-class Symbol:
+class Symbol(NamedTuple):
     """One symbol of a formula: how it is written, what it means, and the dimension it is shown in.
 
     ``dimension`` is the name of a dimension of `model.quantity` ("mass", "speed", ... , "number").
@@ -32,7 +31,7 @@ class Symbol:
     dimension: str
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False, repr=False)
 class Formula(Generic[P, R]):
     """A function on SI floats or arrays, callable like the function it wraps."""
 

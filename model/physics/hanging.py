@@ -6,9 +6,9 @@ Coordinates: x forward, y to the left, z up from the deck. A leg runs from its a
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from enum import StrEnum
 from math import cos, sin
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -36,8 +36,7 @@ class Outcome(StrEnum):
     NO_BALANCE = "no set of taut legs balances the pull"
 
 
-@dataclass(frozen=True, slots=True)
-class Pull:
+class Pull(NamedTuple):
     """One direction of the pull and what each leg carries of it.
 
     ``direction`` is a unit vector, ``tensions`` are in N with every leg carrying, 0 where slack, nan without a balance.
@@ -54,8 +53,7 @@ class Pull:
         return tuple(int(i) for i in np.flatnonzero(self.tensions == 0.0))
 
 
-@dataclass(frozen=True, slots=True)
-class Hang:
+class Hang(NamedTuple):
     """A load hanging on its legs.
 
     Attributes:

@@ -8,9 +8,9 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from math import ceil
-from typing import Literal
+from typing import Literal, NamedTuple
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -178,8 +178,7 @@ class Row:
         return min(parts, key=lambda part: parts[part])
 
 
-@dataclass(frozen=True, slots=True)
-class RowPull:
+class RowPull(NamedTuple):
     """The pull of one row, or of its image.
 
     Attributes:
@@ -207,8 +206,7 @@ class RowPull:
         return max(0.0, -float(self.vector @ np.array(DIRECTIONS[direction]))) * self.scales[direction]
 
 
-@dataclass(frozen=True, slots=True)
-class Hold:
+class Hold(NamedTuple):
     """What all rows hold.
 
     Attributes:
@@ -245,7 +243,7 @@ def hold(rows: Sequence[Row]) -> Hold:
     """
     bare = [pull for index, row in enumerate(rows) for pull in _pulls(index, row)]
     scales = _ring_scales(bare)
-    pulls = tuple(replace(pull, scales=scales.get(pull.ring, pull.scales)) for pull in bare)
+    pulls = tuple(pull._replace(scales=scales.get(pull.ring, pull.scales)) for pull in bare)
     by_kind: dict[str, dict[str, float]] = {way: defaultdict(float) for way in DIRECTIONS}
     for way in DIRECTIONS:
         for pull in pulls:

@@ -6,7 +6,7 @@ Coordinates: x forward, y to the left, z up from the deck. A leg runs from its a
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -187,8 +187,7 @@ def free_tilt(offset: Real, rise: Real) -> Real:
     return np.arctan(offset / rise)
 
 
-@dataclass(frozen=True, slots=True)
-class Apex:
+class Apex(NamedTuple):
     """Where measured legs meet: the point (3,) in m, and per leg (computed - measured)/measured length."""
 
     point: Vector

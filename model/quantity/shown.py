@@ -139,12 +139,15 @@ def show_apart(value: float, bound: float, dimension: Dimension, unit: str, *, d
         return shown
     known = UNITS[dimension][unit]
     exact = [(Fraction(si) - known.offset) / known.factor for si in (value, bound)]
-    while digits < _MOST_DIGITS:
-        first, second = (_read(number, unit, digits) for number in exact)
+    enough = digits
+    while enough < _MOST_DIGITS:
+        first, second = (_read(number, unit, enough) for number in exact)
         if first != second and (first < second) == (value < bound):
             break
-        digits += 1
-    return show(value, dimension, unit, digits=digits), show(bound, dimension, unit, digits=digits)
+        enough += 1
+    if enough == digits:
+        return shown
+    return show(value, dimension, unit, digits=enough), show(bound, dimension, unit, digits=enough)
 
 
 def _show_exact(number: Fraction, unit: str, digits: int, sign: bool) -> str:
@@ -174,12 +177,10 @@ def _read(number: Fraction, unit: str, digits: int) -> Fraction:
 
 def _power(number: Fraction) -> int:
     """The power of ten of the first digit of a positive number."""
-    power = len(str(number.numerator)) - len(str(number.denominator))
-    if number < Fraction(10) ** power:
-        power -= 1
-    elif number >= Fraction(10) ** (power + 1):
-        power += 1
-    return power
+    top, bottom = number.numerator, number.denominator
+    power = len(str(top)) - len(str(bottom))
+    scaled = (top, bottom * 10**power) if power >= 0 else (top * 10**-power, bottom)
+    return power if scaled[0] >= scaled[1] else power - 1
 
 
 def _round(number: Fraction, digits: int) -> Fraction:
@@ -195,8 +196,11 @@ def _round(number: Fraction, digits: int) -> Fraction:
 
 
 def _round_places(number: Fraction, places: int) -> Fraction:
-    scale = Fraction(10) ** places
-    return Fraction(math.floor(number * scale + Fraction(1, 2))) / scale
+    top, bottom = number.numerator, number.denominator
+    if places >= 0:
+        return Fraction((2 * top * 10**places + bottom) // (2 * bottom), 10**places)
+    unit = 10**-places
+    return Fraction((2 * top + bottom * unit) // (2 * bottom * unit) * unit)
 
 
 def _plain(number: Fraction) -> str:
@@ -210,10 +214,10 @@ def _plain(number: Fraction) -> str:
 
 
 def _decimal(number: Fraction) -> str:
-    whole, rest = divmod(number, 1)
+    whole, rest = divmod(number.numerator, number.denominator)
     places = ""
     while rest:
-        digit, rest = divmod(rest * 10, 1)
+        digit, rest = divmod(rest * 10, number.denominator)
         places += str(digit)
     return f"{whole:,}" + (f".{places}" if places else "")
 

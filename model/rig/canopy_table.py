@@ -7,16 +7,14 @@ from __future__ import annotations
 
 import tomllib
 from collections.abc import Mapping
-from dataclasses import dataclass
 from functools import cache
 from pathlib import Path
-from typing import Any
+from typing import Any, NamedTuple
 
 _FILE = Path(__file__).with_name("canopies.toml")
 
 
-@dataclass(frozen=True, slots=True)
-class Figure:
+class Figure(NamedTuple):
     """A figure of the table, dimensionless.
 
     Attributes:
@@ -40,8 +38,7 @@ class Figure:
         return (self.high - self.low) / 2.0
 
 
-@dataclass(frozen=True, slots=True)
-class CanopyType:
+class CanopyType(NamedTuple):
     """A type of canopy; None stands where the handbook gives no figure.
 
     Attributes:
@@ -67,8 +64,7 @@ class CanopyType:
     growth_exponent_disreef: Figure | None
 
 
-@dataclass(frozen=True, slots=True)
-class Bands:
+class Bands(NamedTuple):
     """95 % bands around handbook figures and around the motion.
 
     Attributes:

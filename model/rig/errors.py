@@ -3,14 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from typing import NamedTuple
 
 MOST_PROBLEMS = 100
 """More problems of one file than this are counted, not listed."""
 
 
-@dataclass(frozen=True, slots=True)
-class InputProblem:
+class InputProblem(NamedTuple):
     """One mistake in one file.
 
     Attributes:

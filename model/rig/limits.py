@@ -2,7 +2,7 @@
 
 from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass
-from typing import Annotated, Any, TypeAlias
+from typing import Annotated, Any, NamedTuple, TypeAlias
 
 from pydantic import Field
 
@@ -110,15 +110,14 @@ class LimitSet(Strict):
     inspection: tuple[Inspection, ...] = rows("what has to be looked at")
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False, repr=False)
 class LimitFile(TomlFile):
     """A limit set that was read without a mistake."""
 
     limits: LimitSet
 
 
-@dataclass(frozen=True, slots=True)
-class Bounds:
+class Bounds(NamedTuple):
     """A limit read in the dimension of its step.
 
     Attributes:

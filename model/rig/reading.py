@@ -6,7 +6,7 @@ import os
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from pathlib import Path
-from typing import Any
+from typing import Any, NamedTuple
 
 from model.rig.errors import InputError, InputProblem, whole_file
 from model.rig.limits import LimitFile, LimitSet, limit_faults
@@ -19,7 +19,7 @@ RECORD_SUFFIX = ".record.toml"
 KnownParts = Callable[[str], bool]
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False, repr=False)
 class RigFile(TomlFile):
     """A rig file that was read without a mistake.
 
@@ -32,8 +32,7 @@ class RigFile(TomlFile):
     limits_path: Path | None
 
 
-@dataclass(frozen=True)
-class Loaded:
+class Loaded(NamedTuple):
     """A rig file with its limit set.
 
     Attributes:
@@ -45,8 +44,7 @@ class Loaded:
     limits: LimitFile | None
 
 
-@dataclass(frozen=True)
-class Found:
+class Found(NamedTuple):
     """What lies below a path.
 
     Attributes:

@@ -45,7 +45,7 @@ class Fault(NamedTuple):
     hint: str = ""
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False, repr=False)
 class TomlFile:
     """A file as read.
 

@@ -3,15 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
 from itertools import pairwise
+from typing import NamedTuple
 
 from model.rig.digest import Raw, full_digest, rigging_digest, tables_digest
 from model.rig.entry import Entry
 
 
-@dataclass(frozen=True, slots=True)
-class Standing:
+class Standing(NamedTuple):
     """An entry that stands.
 
     Attributes:
@@ -23,8 +22,7 @@ class Standing:
     stale: bool
 
 
-@dataclass(frozen=True)
-class Standings:
+class Standings(NamedTuple):
     """What stands of a record.
 
     Attributes:

@@ -41,7 +41,7 @@ class Stick(Strict):
     load: tuple[StickLoad, ...] = rows("loads in order of release")
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False, repr=False)
 class StickFile(TomlFile):
     """A stick file that was read without a mistake.
 

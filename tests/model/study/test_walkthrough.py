@@ -152,7 +152,7 @@ def test_a_rig_with_a_table_figure_can_have_it_moved():
     loaded = load(RIGS / "05-pump-warm.toml")
     canopy = loaded.rig.rig.canopy[0].model_copy(update={"fill_constant": None})
     rig = loaded.rig.rig.model_copy(update={"canopy": (canopy,)})
-    changed = replace(loaded, rig=replace(loaded.rig, rig=rig))
+    changed = loaded._replace(rig=replace(loaded.rig, rig=rig))
     chosen = {one.loc: one for one in inputs(Case(rig, loaded.limits.limits))}
     assert chosen["canopy", 0, "fill_constant"].value == 8
     shown = moved(changed, {("canopy", 0, "fill_constant"): 10.0}, chosen)
