@@ -47,13 +47,7 @@ def case_history(case: Case, rule: Rule) -> History:
         Missing: A field that the motion needs is absent.
         CannotJudge: The motion could not be solved to its accuracy.
     """
-    from model.checks.drop import build
-    from model.physics.flight import history
-
-    motions = case.motions
-    motions.motion(rule)
-    values = {name: term.value for name, term in motions.plan.items()}
-    return history(build(values, motions.rig, motions.day, motions.rows), rule)
+    return case.motions.motion(rule).history()
 
 
 def flight_charts(checklist: Checklist, system: UnitSystem) -> FlightCharts:

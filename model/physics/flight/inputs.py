@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
-from typing import Literal, TypeAlias, cast
+from typing import Any, Literal, TypeAlias, cast
 
 import numpy as np
 from numpy.typing import NDArray
@@ -86,26 +86,39 @@ class Drop:
     gravity: float = STANDARD_GRAVITY
 
 
+DROP_VALUES = ("mass", "airspeed", "release_height", "load_drag_area", "ground_altitude", "density_factor")
+ROW_VALUES = ("line_stretch", "static_line", "opens_after", "opens_at_height", "deployment_time")
+FILLING_VALUES = ("area", "fill_distance", "opening_coefficient", "cutter", "filling_time")
+"""Numbers that may differ between cases."""
+
+
 def change_values(drop: Drop, change: Callable[[Values], Values]) -> Drop:
     """A copy of a drop with ``change`` applied to every number that may differ between cases."""
 
-    def each(thing: Filling | Row | Drop, *names: str) -> dict[str, Values]:
+    def each(thing: Filling | Row | Drop, names: tuple[str, ...]) -> dict[str, Any]:
         found = {name: cast("Values | None", getattr(thing, name)) for name in names}
         return {name: change(value) for name, value in found.items() if value is not None}
 
-    def filling(one: Filling) -> Filling:
-        names = ("area", "fill_distance", "opening_coefficient", "cutter", "filling_time")
-        return replace(one, **each(one, *names))        # type: ignore[arg-type]
-
-    def row(one: Row) -> Row:
-        names = ("line_stretch", "static_line", "opens_after", "opens_at_height", "deployment_time")
-        changed = replace(one, **each(one, *names))     # type: ignore[arg-type]
-        return replace(changed, fillings=tuple(filling(f) for f in one.fillings))
-
-    names = ("mass", "airspeed", "release_height", "load_drag_area", "ground_altitude", "density_factor")
-    changed = replace(drop, **each(drop, *names))       # type: ignore[arg-type]
+    rows = tuple(
+        replace(row, fillings=tuple(replace(one, **each(one, FILLING_VALUES)) for one in row.fillings),
+                **each(row, ROW_VALUES))
+        for row in drop.rows
+    )
     winds = tuple((change(height), change(wind)) for height, wind in drop.winds)
-    return replace(changed, rows=tuple(row(r) for r in drop.rows), winds=winds)
+    return replace(drop, rows=rows, winds=winds, **each(drop, DROP_VALUES))
+
+
+def _all_values(drop: Drop) -> Iterator[Values | None]:
+    for name in DROP_VALUES:
+        yield getattr(drop, name)
+    for pair in drop.winds:
+        yield from pair
+    for row in drop.rows:
+        for name in ROW_VALUES:
+            yield getattr(row, name)
+        for filling in row.fillings:
+            for name in FILLING_VALUES:
+                yield getattr(filling, name)
 
 
 def count_cases(drop: Drop) -> int:
@@ -114,22 +127,35 @@ def count_cases(drop: Drop) -> int:
     Raises:
         ValueError: If two arrays differ in length, one is empty or has more than one axis.
     """
-    sizes: set[int] = set()
-
-    def note(value: Values) -> Values:
+    sizes = {1}
+    for value in _all_values(drop):
+        if value is None or isinstance(value, (float, int)):
+            continue
         array = np.asarray(value, float)
         if array.ndim > 1:
             raise ValueError("values of a drop are numbers or arrays with one axis")
-        if array.ndim:
-            sizes.add(array.size)
-        return value
-
-    change_values(drop, note)
+        sizes.add(array.size)
     if 0 in sizes:
         raise ValueError("a drop holds no case")
     if len(sizes - {1}) > 1:
-        raise ValueError(f"arrays of a drop differ in length: {sorted(sizes)}")
-    return max(sizes, default=1)
+        raise ValueError(f"arrays of a drop differ in length: {sorted(sizes - {1})}")
+    return max(sizes)
+
+
+def with_arrays(drop: Drop) -> Drop:
+    """A copy of a drop with an array of one number per case for every number.
+
+    Raises:
+        ValueError: As `count_cases`.
+    """
+    cases = count_cases(drop)
+
+    def spread(value: Values) -> Values:
+        if isinstance(value, (float, int)):
+            return np.full(cases, float(value))
+        return np.ascontiguousarray(np.broadcast_to(np.asarray(value, float), cases))
+
+    return change_values(drop, spread)
 
 
 def check_structure(drop: Drop) -> None:

@@ -36,6 +36,10 @@ class Lobatto:
     """Node values -> coefficients of a power series in x."""
     last: Array
     """Node values -> the last two Legendre coefficients, (2, nodes)."""
+    one: Array
+    """The unit matrix."""
+    with_start: Array
+    """`twice`, and two columns more: what a value and a slope at the start are at the nodes, (nodes, nodes + 2)."""
     grade: int
 
     def fraction(self, x: Array) -> Array:
@@ -57,8 +61,11 @@ def lobatto(nodes: int, grade: int = 1) -> Lobatto:
     tau, stretch = theta**grade, grade * theta ** (grade - 1)
     integral = integral * stretch
     powers = np.linalg.inv(np.vander(x, increasing=True))
+    twice = integral @ integral
+    with_start = np.column_stack((twice, np.ones(nodes), tau))
     return Lobatto(
-        x, tau[:, None], stretch[:, None], integral, integral @ integral, slope, powers, to_legendre[-2:].copy(), grade
+        x, tau[:, None], stretch[:, None], integral, twice, slope, powers, to_legendre[-2:].copy(), np.eye(nodes),
+        with_start, grade,
     )
 
 

@@ -7,9 +7,11 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
+from .by_distance import by_distance
+from .by_time import by_time
 from .density import Air
 from .lobatto import Array, lobatto, root_after
-from .pieces import AreaAt, Buffers, Piece, by_distance, by_time
+from .pieces import AreaAt, Piece, Workshop
 from .state import Growth, Load, Mask, State
 from .wind import Layer, Wind
 
@@ -62,8 +64,8 @@ class Stop:
 class Flyer:
     """Flies courses for one batch."""
 
-    def __init__(self, load: Load, air: Air, wind: Wind, ground: Array, buffers: Buffers) -> None:
-        self.load, self.air, self.wind, self.ground, self.buffers = load, air, wind, ground, buffers
+    def __init__(self, load: Load, air: Air, wind: Wind, ground: Array, workshop: Workshop) -> None:
+        self.load, self.air, self.wind, self.ground, self.workshop = load, air, wind, ground, workshop
 
     def fly(
         self, state: State, course: Course, end: Array, begin: Array | None = None, watch: Watch | None = None
@@ -134,7 +136,7 @@ class Flyer:
     ) -> Piece:
         nodes = lobatto(course.nodes, GRADE if graded else 1)
         solve = by_distance if course.distance else by_time
-        return solve(state, part, area_at, self.load, self.air, layer, nodes, self.buffers)
+        return solve(state, part, area_at, self.load, self.air, layer, nodes, self.workshop)
 
     def _crossing(self, piece: Piece, course: Course, flying: Mask) -> tuple[Array, Mask]:
         """Fraction of the piece at which each case stops (1: it does not), and whether the event stops it."""

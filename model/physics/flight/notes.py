@@ -13,8 +13,9 @@ from .lobatto import Array, root_after, values_at
 from .march import Flyer, Watch
 from .peaks import largest_force, largest_speed
 from .pieces import AreaAt, Piece
-from .record import FillingRecord, Opening, Recorder, RowRecord
+from .record import FillingRecord, RowRecord
 from .state import Mask, State
+from .track import NOTHING_FILLS, Opening, Track
 
 Columns = dict[str, NDArray[Any]]
 SLOW = 1.05
@@ -26,8 +27,8 @@ SEA_LEVEL_DENSITY = 1.225
 class Notes:
     """Records of one batch."""
 
-    def __init__(self, drop: Drop, flyer: Flyer, recorder: Recorder | None) -> None:
-        self.drop, self.recorder = drop, recorder
+    def __init__(self, drop: Drop, flyer: Flyer, track: Track | None) -> None:
+        self.drop, self.track = drop, track
         self.ground, self.load, self.air, self.wind = flyer.ground, flyer.load, flyer.air, flyer.wind
         self.cases = len(self.ground)
         self.factor = as_array(drop.density_factor)
@@ -99,13 +100,13 @@ class Notes:
         """Record the largest dynamic pressure of a glide."""
         pressure, time = glide.largest_pressure()
         self.note_hold(pressure * self.factor, time, where)
-        if self.recorder is not None:
-            self.recorder.glide(glide, area, Opening(0.0, 1.0, -1))
+        if self.track is not None:
+            self.track.glide(glide, area)
 
     def watch_free(self, piece: Piece, flying: Mask) -> None:
-        """Nothing is open: only a history takes note."""
-        if self.recorder is not None and flying[0]:
-            self.recorder.piece(piece, Opening(0.0, 1.0, -1))
+        """Nothing is open: only a track takes note."""
+        if self.track is not None and flying[0]:
+            self.track.piece(piece, NOTHING_FILLS)
 
     def watch_filling(self, record: FillingRecord, number: int, filling: Filling, others: Array) -> Watch:
         """What to note of every piece of a filling; ``others`` is what else hangs open, m2."""
@@ -135,8 +136,8 @@ class Notes:
             top = np.maximum(record.top_speed, largest_speed(piece, flying))
             record.top_speed = np.where(flying, top, record.top_speed)
             record.path = np.where(flying, record.path + piece.through_air(), record.path)
-            if self.recorder is not None and flying[0]:
-                self.recorder.piece(piece, Opening(float(others[0]), float(coefficient[0]), index))
+            if self.track is not None and flying[0]:
+                self.track.piece(piece, Opening(float(others[0]), float(coefficient[0]), index))
 
         return watch
 
@@ -148,8 +149,8 @@ class Notes:
             self.note_hold(pressure * self.factor, time, flying)
             if last:
                 self.note_slow(piece, flying & np.isnan(self.slow_time))
-            if self.recorder is not None and flying[0]:
-                self.recorder.piece(piece, Opening(0.0, 1.0, -1))
+            if self.track is not None and flying[0]:
+                self.track.piece(piece, NOTHING_FILLS)
 
         return watch
 

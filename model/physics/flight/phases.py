@@ -12,8 +12,8 @@ from .lobatto import Array
 from .march import FEW_NODES, NODES, Course, Event, Flyer
 from .notes import Columns, Notes
 from .pieces import Piece
-from .record import Recorder
 from .state import Mask, State
+from .track import Track
 from .trigger import NextRow
 
 FILLING_SPAN = 4.0
@@ -43,12 +43,10 @@ def _count(spans: Array, longest: float) -> int:
 class Flight:
     """One batch; ``pieces`` multiplies the number of pieces of every phase."""
 
-    def __init__(
-        self, drop: Drop, rule: FillingRule, flyer: Flyer, pieces: int, recorder: Recorder | None = None
-    ) -> None:
+    def __init__(self, drop: Drop, rule: FillingRule, flyer: Flyer, pieces: int, track: Track | None) -> None:
         self.drop, self.rule, self.flyer, self.pieces = drop, rule, flyer, pieces
         self.ground, self.load, self.air, self.wind = flyer.ground, flyer.load, flyer.air, flyer.wind
-        self.cases, self.notes = len(self.ground), Notes(drop, flyer, recorder)
+        self.cases, self.notes = len(self.ground), Notes(drop, flyer, track)
 
     def run(self) -> Columns:
         """Fly; fields of `Motion` but rule and accurate."""

@@ -8,8 +8,8 @@ With the drag factor A(t) = exp(integral of k V dt), U = u A and P = w A the equ
 
     A' = k hypot(U, P)    P' = g A    U' = P dW/dz
 
-in which nothing decays and nothing is singular, so that polynomials through a few nodes hold whole phases. Both forms
-below are solved by Newton's method with the mean Jacobian of the batch: a small constant matrix per iteration.
+in which nothing decays and nothing is singular, so that polynomials through a few nodes hold whole phases. Pieces by
+time and by distance are solved by Newton's method with the mean Jacobian of the batch: a small matrix per iteration.
 """
 
 from __future__ import annotations
@@ -20,36 +20,45 @@ from functools import cached_property
 
 import numpy as np
 
-from .density import Air
 from .lobatto import Array, Lobatto
-from .state import Load, State
+from .state import State
 from .wind import Layer
 
 ITERATIONS = 16
 CONVERGED = 1.5e-7
 """Iterations end when the next change is estimated to be less, relative."""
-SLOWEST = 1e-6
-"""m/s; a flight through the air by distance is not followed below."""
+SETUP = 3
+"""Iterations that cost as much as all else about a piece."""
 
 AreaAt = Callable[[Array], Array]
 """Area of the open canopies, m2, at fractions of a piece."""
 
 
-class Buffers:
-    """Work arrays by shape; the histories of a piece live in them until the next piece is solved."""
+class Workshop:
+    """Work arrays by shape, and how much work may still be done.
+
+    The histories of a piece live in the arrays until the next piece is solved; those of a single case stay.
+    """
 
     def __init__(self) -> None:
         self.arrays: dict[tuple[int, int], list[Array]] = {}
+        self.effort = np.inf
+        """Iterations left."""
 
     def get(self, nodes: int, cases: int) -> list[Array]:
         """Arrays with 2 n, n + 2, n, n, n, n rows."""
+        if cases == 1:
+            return _new(nodes, 1)
         found = self.arrays.get((nodes, cases))
         if found is None:
             if len(self.arrays) > 7:
                 self.arrays.clear()
-            found = [np.empty((rows, cases)) for rows in (2 * nodes, nodes + 2, nodes, nodes, nodes, nodes)]
-            self.arrays[nodes, cases] = found
+            found = self.arrays[nodes, cases] = _new(nodes, cases)
         return found
+
+
+def _new(nodes: int, cases: int) -> list[Array]:
+    return [np.empty((rows, cases)) for rows in (2 * nodes, nodes + 2, nodes, nodes, nodes, nodes)]
 
 
 @dataclass(frozen=True, eq=False)
@@ -111,132 +120,25 @@ class Piece:
         return way * self.unit
 
 
-def by_time(
-    start: State, duration: Array, area_at: AreaAt, load: Load, air: Air, layer: Layer, nodes: Lobatto,
-    buffers: Buffers,
-) -> Piece:
-    """Solve a piece that lasts so many seconds, (cases,)."""
-    count, cases = len(nodes.x), len(duration)
-    PA, source, drive, z, density, strength = buffers.get(count, cases)
-    P, A, scratch = PA[:count], PA[count:], source[:count]
-    duration = np.maximum(duration, 1e-9)               # a piece that does not happen lasts a nanosecond
-    fall = load.gravity * duration
-    depth = fall * duration
-    U = start.u / fall                                  # now P' = A and A' = strength hypot(U, P)
-    source[count], source[count + 1] = start.w / fall, 1
-    np.add(source[count], nodes.tau, out=P)             # first guess: no drag
-    A[:] = 1
-    per_density = (area_at(nodes.tau) + load.drag_area) * (depth / load.doubled_mass)
-    density[:] = air(start.z)
-    np.multiply(per_density, density, out=strength)
-    side = U * U
-    change = left = np.ones(cases)
-    few = slice(None, None, max(1, cases // 64))        # cases that stand for all in the Jacobian
-    jacobian, to_PA = np.empty(count), np.empty((2 * count, count + 2))
+def converge(step: Callable[[int], None], sample: Callable[[], Array], workshop: Workshop) -> Array:
+    """Iterate until samples settle; an estimate of what is left to change, relative, (cases,)."""
+    before = sample()
+    change = left = np.ones(before.shape[1])
     for iteration in range(ITERATIONS):
-        if iteration < 2:
-            each = P[:, few] / (np.sqrt(P[:, few] ** 2 + side[..., few]) + 1e-30) * strength[..., few]
-            jacobian = _mean(each)
-            to_PA = _newton(nodes, jacobian)
-        before = _sample(PA, density)
-        np.multiply(P, P, out=drive)
-        drive += side
-        np.sqrt(drive, out=drive)
-        drive *= strength
-        np.multiply(P, jacobian[:, None], out=scratch)
-        np.subtract(drive, scratch, out=scratch)
-        np.matmul(to_PA, source, out=PA)
-        np.divide(P, A, out=scratch)
-        np.matmul(nodes.integral, scratch, out=z)
-        z *= -depth
-        z += start.z
-        if layer.slope is not None:
-            U = start.u / fall + (layer.slope * duration) * (nodes.integral @ P)
-            side = U * U
-        air(z, density, scratch)
-        np.multiply(per_density, density, out=strength)
-        change, previous = np.abs(_sample(PA, density) / before - 1).sum(0), change
-        left = _left(change, previous)
-        if iteration and np.fmax.reduce(left) < CONVERGED:
+        workshop.effort -= 1
+        step(iteration)
+        after = sample()
+        change, previous = np.abs(after / before - 1).sum(0), change
+        before = after
+        shrinks = np.fmin(change / previous, 0.9)
+        left = change * shrinks / (1 - shrinks)
+        if iteration and not np.fmax.reduce(left) >= CONVERGED:     # nan: all cases are lost
             break
-    ripple = 0.02 * _ripple(nodes, drive, A[-1]) + 0.1 * _ripple(nodes, density, density[-1])
-    end = _end(start, np.maximum(left, ripple), nodes, layer, A, U, P, z, duration, fall)
-    return Piece(nodes, start, end, area_at, layer, fall, A, U, P, drive, z, density, duration, 1.0)
+    workshop.effort -= SETUP
+    return left
 
 
-def _newton(nodes: Lobatto, jacobian: Array) -> Array:
-    """Matrix from what the mean Jacobian leaves of the drive, and P and A at the start, to P and A at all nodes."""
-    count = len(nodes.x)
-    source = np.column_stack((nodes.twice, np.ones(count), nodes.tau))
-    to_P = np.linalg.inv(np.eye(count) - nodes.twice * jacobian) @ source
-    to_A = (nodes.integral * jacobian) @ to_P
-    to_A[:, :count] += nodes.integral
-    to_A[:, count + 1] += 1
-    return np.concatenate((to_P, to_A))
-
-
-def by_distance(
-    start: State, length: Array, area_at: AreaAt, load: Load, air: Air, layer: Layer, nodes: Lobatto,
-    buffers: Buffers,
-) -> Piece:
-    """Solve a piece that is so long through the air, m, (cases,).
-
-    With sigma = path/length the drag factor is a quadrature, ln A = length * integral of k dsigma, and with
-    H = hypot(U, P) dt/dsigma = length A/H, dP/dsigma = g length A^2/H, dz/dsigma = -length P/H.
-    """
-    count, cases = len(nodes.x), len(length)
-    PA, source, drive, z, density, strength = buffers.get(count, cases)
-    P, A, H = PA[:count], PA[count:], source[:count]
-    length = np.maximum(length, 1e-9)
-    per_density = (area_at(nodes.tau) + load.drag_area) * (length / load.doubled_mass)
-    density[:] = air(start.z)
-    U = start.u
-    pull = load.gravity * length
-    change = left = np.ones(cases)
-    few = slice(None, None, max(1, cases // 64))
-    jacobian: Array = np.empty(count)
-    newton: Array = np.eye(count)
-    for iteration in range(ITERATIONS):
-        np.multiply(per_density, density, out=strength)
-        np.matmul(nodes.integral, strength, out=A)
-        np.exp(A, out=A)
-        if iteration == 0:
-            P[:] = _first_guess(start, U, pull * (nodes.integral @ (A * A)))
-        before = _sample(PA, density)
-        _speed(P, U, H, drive)
-        np.multiply(A, A, out=drive)
-        drive *= pull
-        drive /= H
-        if iteration < 3:
-            jacobian = _mean(-drive[:, few] * P[:, few] / H[:, few] ** 2)
-            newton = np.asarray(np.linalg.inv(np.eye(count) - nodes.integral * jacobian))
-        np.multiply(P, jacobian[:, None], out=strength)
-        np.subtract(drive, strength, out=strength)
-        np.matmul(newton @ nodes.integral, strength, out=P)
-        P += newton.sum(1, keepdims=True) * start.w
-        _speed(P, U, H, strength)
-        np.divide(P, H, out=strength)
-        np.matmul(nodes.integral, strength, out=z)
-        z *= -length
-        z += start.z
-        if layer.slope is not None:
-            strength *= A
-            U = start.u + (layer.slope * length) * (nodes.integral @ strength)
-        air(z, density, strength)
-        change, previous = np.abs(_sample(PA, density) / before - 1).sum(0), change
-        left = _left(change, previous)
-        if iteration and np.fmax.reduce(left) < CONVERGED:
-            break
-    pace = A / H * length
-    ripple = 0.02 * (_ripple(nodes, drive, H[-1]) + _ripple(nodes, pace, start.t + nodes.integral[-1] @ pace))
-    np.multiply(per_density, density, out=drive)
-    drive *= A                                          # now dA / dsigma
-    ripple += 0.02 * _ripple(nodes, drive, A[-1]) + 0.1 * _ripple(nodes, density, density[-1])
-    end = _end(start, np.maximum(left, ripple), nodes, layer, A, U, P, z, pace, 1.0)
-    return Piece(nodes, start, end, area_at, layer, 1.0, A, U, P, drive, z, density, pace, load.gravity * pace)
-
-
-def _end(
+def end_of_piece(
     start: State, error: Array, nodes: Lobatto, layer: Layer, A: Array, U: Array, P: Array, z: Array, pace: Array,
     unit: Array | float,
 ) -> State:
@@ -248,41 +150,19 @@ def _end(
     return State(t, x, z[-1].copy(), u[-1], w, np.maximum(start.error, error), start.landed, start.layer)
 
 
-def _speed(P: Array, U: Array, H: Array, scratch: Array) -> None:
-    """H = hypot(P, U), not below the slowest; far quicker than the library's, which guards against overflow."""
-    np.multiply(P, P, out=H)
-    H += np.multiply(U, U, out=scratch) if U.ndim == 2 else U * U
-    np.sqrt(H, out=H)
-    np.maximum(H, SLOWEST, out=H)
+def few_of(cases: int) -> slice:
+    """Cases that stand for all in the Jacobian."""
+    return slice(None, None, max(1, cases // 64))
 
 
-def _first_guess(start: State, U: Array, fallen: Array) -> Array:
-    """P from dP = d fallen/hypot(U, P): exact where U or P alone is the speed."""
-    square = U * U
-    return start.w + np.sqrt(2 / (square + np.sqrt(square * square + fallen * fallen) + SLOWEST)) * fallen
-
-
-def _mean(jacobian: Array) -> Array:
+def mean_of(jacobian: Array) -> Array:
     """Mean over the cases; a lost case must not spoil the others."""
     jacobian[~(np.abs(jacobian) < 1e9)] = 0
     mean: Array = jacobian @ np.full(jacobian.shape[1], 1 / jacobian.shape[1])
     return mean
 
 
-def _sample(PA: Array, density: Array) -> Array:
-    """Values that tell how far the iterations have come."""
-    count = len(density)
-    return np.concatenate((PA[[count // 2, count - 1, -1]], density[-1:]))
-
-
-def _left(change: Array, previous: Array) -> Array:
-    """What is left to change, judged from the last two changes."""
-    shrinks = np.fmin(change / previous, 0.9)
-    left: Array = change * shrinks / (1 - shrinks)
-    return left
-
-
-def _ripple(nodes: Lobatto, history: Array, scale: Array) -> Array:
+def ripple(nodes: Lobatto, history: Array, scale: Array) -> Array:
     """The highest Legendre coefficients of a history against a scale."""
-    ripple: Array = np.abs(nodes.last @ history).sum(0) / scale
-    return ripple
+    found: Array = np.abs(nodes.last @ history).sum(0) / scale
+    return found

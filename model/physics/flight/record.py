@@ -1,18 +1,14 @@
-"""Records that a batch fills in as it flies, and the history of a single case."""
+"""Records that a batch fills in as it flies."""
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from dataclasses import dataclass, field
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
-from .glide import Glide
-from .lobatto import Array, Lobatto, power_table
+from .lobatto import Array
 from .peaks import Peak
-from .pieces import AreaAt, Piece
 
 
 class FillingRecord:
@@ -60,68 +56,3 @@ class RowRecord:
             "line_stretch_equivalent_speed": self.equivalent, "line_stretch_angle": self.angle,
             "line_stretch_relative_speed": self.relative, "row_force": self.force.value,
         }
-
-
-@dataclass(frozen=True, eq=False)
-class Opening:
-    """What is open during a stretch of one case's flight."""
-
-    others: float
-    """m2, of rows that do not fill."""
-    coefficient: float
-    """Opening coefficient of the row that fills."""
-    filling: int
-    """-1: none."""
-
-
-@dataclass(frozen=True, eq=False)
-class Stretch:
-    """Node values of a stretch of one case's flight: t, x, z, and u A, w A, A; (6, nodes)."""
-
-    nodes: Lobatto
-    values: Array
-    area_at: AreaAt
-    opening: Opening
-    last: float
-    """The x (-1..1) at which the stretch ends."""
-
-    @property
-    def seconds(self) -> float:
-        """How long it lasts."""
-        return float(self.at(np.array([self.last]))[0, 0] - self.values[0, 0])
-
-    def at(self, x: Array) -> Array:
-        """Values t, x, z, u, w at some x, (5, points)."""
-        values = self.values @ (self.nodes.powers.T @ power_table(x, len(self.nodes.x)))
-        values = np.where(x == -1, self.values[:, :1], np.where(x == 1, self.values[:, -1:], values))   # no rounding
-        t, way, z, U, W, A = values
-        return np.stack([t, way, z, U / A, W / A])
-
-
-@dataclass(eq=False)
-class Recorder:
-    """Collects the stretches of one case."""
-
-    stretches: list[Stretch] = field(default_factory=list)
-
-    def piece(self, piece: Piece, opening: Opening) -> None:
-        """Add a piece."""
-        start = piece.start
-        moments, way = start.t + piece.elapsed, start.x + piece.along()
-        rows = (moments, way, piece.z, piece.U * piece.unit, piece.P * piece.unit, piece.A)
-        values = np.stack([np.broadcast_to(row, piece.A.shape)[:, 0] for row in rows])
-        self.stretches.append(Stretch(piece.nodes, values, piece.area_at, opening, 1.0))
-
-    def glide(self, glide: Glide, area: Array, opening: Opening) -> None:
-        """Add a glide."""
-        rows = (glide.t, glide.x, glide.z, glide.u, glide.w, np.ones_like(glide.t))
-        values = np.stack([row[:, 0] for row in rows])
-        last = 1.0
-        if glide.end.t[0] < glide.t[-1, 0]:
-            depth = glide.z[0, 0] - glide.z[-1, 0]
-            last = float(2 * (glide.z[0, 0] - glide.end.z[0]) / depth - 1)
-        self.stretches.append(Stretch(glide.nodes, values, _constant(area), opening, last))
-
-
-def _constant(area: Array) -> Callable[[Array], Array]:
-    return lambda tau: area

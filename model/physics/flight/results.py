@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
 
 import numpy as np
 from numpy.typing import NDArray
@@ -10,6 +11,9 @@ from numpy.typing import NDArray
 from .inputs import FillingRule
 from .lobatto import Array
 from .state import Mask
+
+if TYPE_CHECKING:
+    from .track import Track
 
 
 @dataclass(frozen=True, eq=False)
@@ -83,6 +87,21 @@ class Motion:
     """Landed before the end of its last filling."""
     landed_in: NDArray[np.intp]
     """-1: before the first line stretch; 2 i: while filling i; 2 i + 1: after filling i."""
+
+    track: Track | None = field(default=None, repr=False)
+    """What a single case flew, if it is accurate."""
+
+    def history(self, count: int = 400) -> History:
+        """The curves of a single case as about ``count`` points, corners and jumps among them; nothing is flown again.
+
+        Raises:
+            ValueError: For more than one case, or a case that is not accurate.
+        """
+        if len(self.accurate) != 1:
+            raise ValueError("a history is that of one case")
+        if self.track is None:
+            raise ValueError("a flight that is not accurate has no history")
+        return self.track.history(count)
 
     @property
     def opening_force(self) -> Array:

@@ -2,20 +2,21 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
 from typing import cast
 
 import numpy as np
 
 from .density import air_between
-from .inputs import Drop, FillingRule, Values, as_array, change_values, check_structure, count_cases
+from .inputs import Drop, FillingRule, as_array, change_values, check_structure, with_arrays
 from .lobatto import Array
 from .march import Flyer
 from .notes import Columns
 from .phases import TOLERANCE, Flight
-from .pieces import Buffers
-from .record import Recorder, Stretch
+from .pieces import Workshop
 from .results import History, Motion
 from .state import Load, Mask
+from .track import Track
 from .wind import Wind
 
 DEEPEST = 64
@@ -24,6 +25,11 @@ CHUNK = 8192
 """Cases flown at once."""
 BELOW_GROUND = 100.0
 """m; the density is known so far below the ground, where pieces end before they are cut off."""
+EFFORT = 3000
+"""Most work on one case, in iterations of a piece and alike. Flights that can be solved take a tenth or less."""
+COMPANY = 8
+"""Cases flown together differ and need more pieces than each alone: the work on a batch is at most so many times
+that."""
 
 
 def solve(drop: Drop, rule: FillingRule) -> Motion:
@@ -40,96 +46,73 @@ def solve(drop: Drop, rule: FillingRule) -> Motion:
     if rule not in ("time", "distance"):
         raise ValueError(f"unknown filling rule {rule!r}")
     check_structure(drop)
-    drop = _as_arrays(drop, count_cases(drop))
+    drop = with_arrays(drop)
     with np.errstate(all="ignore"):
-        found, accurate, _ = _solve(drop, rule, 1)
-    return Motion(rule=rule, accurate=accurate, **found)
+        flown = _solve(drop, rule, 1, 1.0)
+    track = flown.track if flown.accurate.all() else None
+    return Motion(rule=rule, accurate=flown.accurate, track=track, **flown.found)
 
 
 def history(drop: Drop, rule: FillingRule, count: int = 400) -> History:
-    """The flight of a single case as about ``count`` points, corners and jumps among them.
+    """`solve`, and the curves of a single case as about ``count`` points.
 
     Raises:
-        ValueError: As `solve`, and for more than one case.
+        ValueError: As `solve`, for more than one case, and for a case that cannot be solved to its accuracy.
     """
-    if rule not in ("time", "distance"):
-        raise ValueError(f"unknown filling rule {rule!r}")
-    check_structure(drop)
-    if count_cases(drop) != 1:
-        raise ValueError("a history is that of one case")
-    drop = _as_arrays(drop, 1)
-    recorder = Recorder()
-    with np.errstate(all="ignore"):
-        _, _, pieces = _solve(drop, rule, 1)
-        _fly(drop, rule, pieces, Buffers(), recorder)
-        return _points(drop, recorder.stretches, count)
+    return solve(drop, rule).history(count)
 
 
-def _as_arrays(drop: Drop, cases: int) -> Drop:
-    def spread(value: Values) -> Values:
-        return np.ascontiguousarray(np.broadcast_to(np.asarray(value, float), cases))
+@dataclass(eq=False)
+class _Flown:
+    found: Columns
+    accurate: Mask
+    effort: float
+    """Share of the work allowed that is left; of several chunks the most."""
+    track: Track | None
+    """Of a single case."""
 
-    return change_values(drop, spread)
+
+def _solve(drop: Drop, rule: FillingRule, pieces: int, effort: float) -> _Flown:
+    """Fly with a multiple of the pieces, and what is not accurate again with twice as many."""
+    cases = len(as_array(drop.mass))
+    flown = _fly_chunks(drop, rule, pieces, effort)
+    if flown.accurate.all() or pieces == DEEPEST or flown.effort <= 0:
+        return flown
+    again = ~flown.accurate
+    better = _solve(_choose(drop, again), rule, 2 * pieces, flown.effort)
+    if cases == 1:
+        return better
+    flown.accurate[again] = better.accurate
+    for key, value in better.found.items():
+        flown.found[key][..., again] = value
+    return flown
 
 
-def _solve(drop: Drop, rule: FillingRule, pieces: int) -> tuple[Columns, Mask, int]:
-    """Results, which cases are accurate, and the largest multiple of pieces that was flown."""
-    cases, buffers = len(as_array(drop.mass)), Buffers()
-    parts = []
+def _fly_chunks(drop: Drop, rule: FillingRule, pieces: int, effort: float) -> _Flown:
+    """Fly every case once."""
+    cases, workshop, parts = len(as_array(drop.mass)), Workshop(), []
     for first in range(0, cases, CHUNK):
-        chosen = slice(first, first + CHUNK)
-        chunk = drop if cases <= CHUNK else _choose(drop, chosen)
-        parts.append(_fly(chunk, rule, pieces, buffers))
-    found = parts[0]
+        chunk = drop if cases <= CHUNK else _choose(drop, slice(first, first + CHUNK))
+        allowed = EFFORT * min(len(as_array(chunk.mass)), COMPANY)
+        workshop.effort = allowed * effort
+        track = Track(drop) if cases == 1 else None
+        found = _fly(chunk, rule, pieces, workshop, track)
+        parts.append(_Flown(found, found["error"] < TOLERANCE, workshop.effort / allowed, track))
+    flown = parts[0]
     if len(parts) > 1:
-        found = {key: np.concatenate([part[key] for part in parts], -1) for key in found}
-    accurate = found["error"] < TOLERANCE
-    if not accurate.all() and pieces < DEEPEST:
-        again = ~accurate
-        better, accurate[again], pieces = _solve(_choose(drop, again), rule, 2 * pieces)
-        for key, value in better.items():
-            found[key][..., again] = value
-    return found, accurate, pieces
+        flown.found = {key: np.concatenate([part.found[key] for part in parts], -1) for key in flown.found}
+        flown.accurate = np.concatenate([part.accurate for part in parts])
+        flown.effort = max(part.effort for part in parts)
+    return flown
 
 
 def _choose(drop: Drop, chosen: slice | Mask) -> Drop:
     return change_values(drop, lambda value: cast("Array", value)[chosen])
 
 
-def _fly(drop: Drop, rule: FillingRule, pieces: int, buffers: Buffers, recorder: Recorder | None = None) -> Columns:
+def _fly(drop: Drop, rule: FillingRule, pieces: int, workshop: Workshop, track: Track | None) -> Columns:
     ground, release = as_array(drop.ground_altitude), as_array(drop.release_height)
     air = air_between(drop.density, float(ground.min()) - BELOW_GROUND, float((ground + release).max()) + 1)
     load = Load(2 * as_array(drop.mass) / as_array(drop.density_factor), as_array(drop.load_drag_area), drop.gravity)
-    flyer = Flyer(load, air, Wind(drop), ground, buffers)
-    return Flight(drop, rule, flyer, pieces, recorder).run()
-
-
-def _points(drop: Drop, stretches: list[Stretch], count: int) -> History:
-    """Evaluate stretches, half of the points by time and half by number of stretches."""
-    ground, factor = float(as_array(drop.ground_altitude)[0]), float(as_array(drop.density_factor)[0])
-    seconds = np.array([stretch.seconds for stretch in stretches])
-    share = seconds / max(seconds.sum(), 1e-9) + 1 / max(len(stretches), 1)
-    rows, areas, weighted, filling = [], [], [], []
-    for stretch, part in zip(stretches, share, strict=True):
-        x = np.linspace(-1, stretch.last, max(3, round(count * part / 2)))
-        rows.append(stretch.at(x))
-        area = np.asarray(stretch.area_at(stretch.nodes.fraction(x)[:, None]))
-        area = np.broadcast_to(area, (len(x), 1))[:, 0]
-        opening = stretch.opening
-        areas.append(area)
-        weighted.append(area + (opening.coefficient - 1) * (area - opening.others))
-        filling.append(np.full(len(x), opening.filling))
-    t, way, z, u, w = np.concatenate(rows, 1) if rows else _standing(drop)
-    area = np.concatenate(areas) if rows else np.zeros(1)
-    speed = np.hypot(u, w)
-    pressure = 0.5 * factor * np.asarray(drop.density(z), float) * speed * speed
-    return History(
-        time=t, height=z - ground, distance=way, u=u, w=w, speed=speed, canopy_area=area,
-        canopy_force=pressure * (np.concatenate(weighted) if rows else area), canopy_force_plain=pressure * area,
-        filling=np.concatenate(filling) if rows else np.full(1, -1),
-    )
-
-
-def _standing(drop: Drop) -> Array:
-    """A load released on the ground: one moment."""
-    return np.array([[0.0], [0.0], as_array(drop.ground_altitude), as_array(drop.airspeed), [0.0]])
+    flyer = Flyer(load, air, Wind(drop), ground, workshop)
+    return Flight(drop, rule, flyer, pieces, track).run()
