@@ -10,12 +10,12 @@ from typing import Any
 from textual.containers import Horizontal
 from textual.message import Message
 from textual.widget import Widget
-from textual.widgets import Input
 
 from tui.commands import BY_ID
 from tui.rows import paragraph, row, row_width
 from tui.screens.base import BaseScreen
 from tui.services import NotWrittenError
+from tui.widgets.field import Field
 from tui.widgets.page import Page
 from tui.workers import unexpected
 
@@ -69,15 +69,11 @@ class MovedFileScreen(BaseScreen):
             NotWrittenError: If it could not be written.
         """
 
-    def on_mount(self) -> None:
-        """Keep the cursor still."""
-        self.query_one(Input).cursor_blink = False
-
     def below(self) -> Iterator[Widget]:
         """The field of the file's name."""
         with Horizontal(id="field-line"):
             yield Page(id="asked")
-            yield Input(compact=True, select_on_focus=False, id="field", max_length=_LONGEST)
+            yield Field(id="field", max_length=_LONGEST)
 
     def draw_field(self, cells: int) -> None:
         """Draw the question beside the field."""
@@ -101,7 +97,7 @@ class MovedFileScreen(BaseScreen):
         if not self.changes:
             self.say("Nothing is moved, so there is nothing to write.")
             return
-        field = self.query_one(Input)
+        field = self.query_one(Field)
         field.value = f"{self.rig.stem}-moved.toml"
         field.cursor_position = len(field.value)
         self._asking = True
@@ -110,7 +106,7 @@ class MovedFileScreen(BaseScreen):
         self.hush()
         self.draw()
 
-    def on_input_submitted(self, event: Input.Submitted) -> None:
+    def on_input_submitted(self, event: Field.Submitted) -> None:
         """Write the file."""
         if not self._asking or self._writing:
             return

@@ -61,7 +61,6 @@ class WalkedScreen(MovedFileScreen):
 
     def on_mount(self) -> None:
         """Have the rig read."""
-        super().on_mount()
         self._open()
 
     @property

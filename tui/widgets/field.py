@@ -21,8 +21,8 @@ class Field(Input, inherit_bindings=False):
         Binding("enter", "submit", "Take it", show=False, id="field.enter"),
     ]
 
-    def __init__(self, *, id: str | None = None) -> None:  # noqa: A002
-        """Make an empty field of one row."""
-        super().__init__(compact=True, select_on_focus=False, id=id)
+    def __init__(self, *, id: str | None = None, max_length: int = 0) -> None:  # noqa: A002
+        """Make an empty field of one row; 0 is no greatest length."""
+        super().__init__(compact=True, select_on_focus=False, id=id, max_length=max_length)
         # A steady cursor: blinking tells nothing and costs repaints.
         self.cursor_blink = False
