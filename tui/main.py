@@ -14,6 +14,8 @@ UNREADABLE, INTERRUPTED, PIPE_CLOSED = 2, 130, 141
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run rigslate and return its exit status."""
     words = list(sys.argv[1:] if arguments is None else arguments)
+    # The models take no plugins; looking for them would cost more than writing an entry.
+    os.environ.setdefault("PYDANTIC_DISABLE_PLUGINS", "__all__")
     _plain_streams()
     try:
         status = _run(words)
@@ -42,11 +44,12 @@ def _run(words: list[str]) -> int:
 
     if words and words[0] in COMMANDS:
         options = parse(words)
-        # What modules create stays for good: looking through it for garbage while they load takes a cold check longer.
+        # What modules create stays for good: looking through it for garbage, now or later, takes a cold check longer.
         gc.disable()
         try:
             module = __import__(f"tui.command_line.{options.command}", fromlist=["run"])
         finally:
+            gc.freeze()
             gc.enable()
         status: int = module.run(options)
         return status

@@ -2,22 +2,25 @@
 
 from __future__ import annotations
 
+import os
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from model.checks import inspected, registry
 from model.checks.case import Case
 from model.checks.finding import Checklist, Finding, Limit, Ruling, Signature, Verdict
 from model.checks.inputs import verify
 from model.checks.step import Step, bound_in_unit, judge
-from model.rig import digest, record
-from model.rig.entry import Entry
 from model.rig.errors import InputError, InputProblem
 from model.rig.limits import Bounds, LimitFile, LimitSet, resolve
-from model.rig.reading import Loaded, load
+from model.rig.reading import Loaded, load, record_path
 from model.rig.rig import TABLES
 from model.rig.standing import standing
+
+if TYPE_CHECKING:
+    from model.rig.entry import Entry
 
 LEFT_OUT = "left out on purpose, "
 
@@ -31,7 +34,7 @@ def check(path: Path) -> Checklist:
     loaded = load(path)
     problems: list[InputProblem] = []
     try:
-        entries: Sequence[Entry] = record.read_record(record.record_path(path))
+        entries: Sequence[Entry] = _entries(path)
     except InputError as error:
         problems += error.problems
         entries = ()
@@ -42,6 +45,15 @@ def check(path: Path) -> Checklist:
     if problems:
         raise InputError(problems)
     return checklist
+
+
+def _entries(path: Path) -> Sequence[Entry]:
+    """The record of a rig; what reads and writes records is loaded only where there is one."""
+    if not os.path.lexists(record_path(path)):
+        return ()
+    from model.rig.record import read_record
+
+    return read_record(record_path(path))
 
 
 def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
@@ -81,7 +93,6 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         revision=rig_file.rig.rig.revision,
         limit_set=limits.limits.set.name if limits else "",
         findings=tuple(findings),
-        digests=(digest.rigging_digest(rig_file.raw, limits_raw), digest.full_digest(rig_file.raw, limits_raw)),
         signatures=tuple(Signature(one.entry.who, one.entry.when, one.stale) for one in standings.signatures),
         stale=tuple(dict.fromkeys(key for key, one in settled if one.stale)),
         notes=(*_notes(limits.limits if limits else None), *_left_out_notes(case, findings)),

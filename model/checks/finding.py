@@ -182,12 +182,21 @@ class Checklist:
     revision: int | None
     limit_set: str
     findings: tuple[Finding, ...]
-    digests: tuple[str, str] = ("", "")
     signatures: tuple[Signature, ...] = ()
     stale: tuple[str, ...] = ()
     notes: tuple[str, ...] = ()
     details: Any = None
     content: Any = None
+
+    @property
+    def digests(self) -> tuple[str, str]:
+        """Digest of the rigging and of everything in both files; empty without the content they are taken of."""
+        if self.content is None:
+            return "", ""
+        from model.rig.digest import full_digest, rigging_digest
+
+        rig, limits = self.content
+        return rigging_digest(rig, limits), full_digest(rig, limits)
 
     @property
     def verdict(self) -> Verdict:

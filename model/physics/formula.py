@@ -8,10 +8,12 @@ A test parses every text with a computer-algebra library and compares it with th
 
 from __future__ import annotations
 
-import inspect
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
-from typing import Generic, NamedTuple, ParamSpec, TypeVar, cast
+from typing import TYPE_CHECKING, Generic, NamedTuple, ParamSpec, TypeVar, cast
+
+if TYPE_CHECKING:
+    from types import FunctionType
 
 P = ParamSpec("P")
 R = TypeVar("R")
@@ -88,7 +90,8 @@ def formula(
     """
 
     def wrap(function: Callable[P, R]) -> Formula[P, R]:
-        if list(inspect.signature(function).parameters) != list(symbols):
+        code = cast("FunctionType", function).__code__
+        if code.co_varnames[: code.co_argcount + code.co_kwonlyargcount] != tuple(symbols):
             raise ValueError(f"{function.__name__}: symbols must name the arguments, in their order")
         arguments = {name: _symbol(written) for name, written in symbols.items()}
         made = Formula(function, text, arguments, _symbol(result), source, holds, leaves_out)

@@ -83,14 +83,21 @@ class Bands(NamedTuple):
 
 
 @cache
-def _raw() -> Mapping[str, Any]:
-    return tomllib.loads(_FILE.read_text(encoding="utf-8"))
+def _texts() -> tuple[str, Mapping[str, str]]:
+    """The text above the types, and that of each type by its name; a rig needs few types, so each is parsed alone."""
+    head, *rows = _FILE.read_text(encoding="utf-8").split("\n[[type]]\n")
+    return head, {tomllib.loads(row.partition("\n")[0])["name"]: row for row in rows}
+
+
+@cache
+def _head() -> Mapping[str, Any]:
+    return tomllib.loads(_texts()[0])
 
 
 @cache
 def type_names() -> tuple[str, ...]:
     """The names of all types, in the order of the table."""
-    return tuple(row["name"] for row in _raw()["type"])
+    return tuple(_texts()[1])
 
 
 @cache
@@ -100,10 +107,8 @@ def lookup(name: str) -> CanopyType:
     Raises:
         KeyError: the table has no such type.
     """
-    sources = _raw()["sources"]
-    row = next((row for row in _raw()["type"] if row["name"] == name), None)
-    if row is None:
-        raise KeyError(name)
+    row = tomllib.loads(_texts()[1][name])
+    sources = _head()["sources"]
 
     def figure(key: str) -> Figure | None:
         given = row.get(key)
@@ -125,4 +130,4 @@ def lookup(name: str) -> CanopyType:
 @cache
 def bands() -> Bands:
     """The bands of the table."""
-    return Bands(**_raw()["bands"])
+    return Bands(**_head()["bands"])

@@ -5,8 +5,6 @@ SHA-256 over sorted compact JSON of the TOML values as written; comments, spacin
 
 from __future__ import annotations
 
-import hashlib
-import json
 from collections.abc import Iterable, Mapping
 from datetime import date, time
 from typing import Any, TypeAlias
@@ -18,6 +16,9 @@ _NOT_RIGGING = frozenset({"rig", "drop", "limits"})
 
 def digest(values: object) -> str:
     """SHA-256 of values as sorted compact JSON, in hexadecimal; dates and times as ISO text."""
+    import hashlib
+    import json  # a check of a rig without a record takes no digest
+
     text = json.dumps(values, sort_keys=True, separators=(",", ":"), ensure_ascii=False, default=_iso)
     return hashlib.sha256(text.encode("utf-8")).hexdigest()
 

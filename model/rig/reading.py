@@ -123,6 +123,12 @@ def _limits_of(file: TomlFile) -> LimitFile | None:
     return read_limits(path)
 
 
+def record_path(rig: Path | str) -> Path:
+    """Where the record of a rig file lies: `x.record.toml` beside `x.toml`."""
+    rig = Path(rig)
+    return rig.with_name(f"{rig.name.removesuffix('.toml')}{RECORD_SUFFIX}")
+
+
 def find_rigs(path: Path | str) -> Found:
     """The rig files below a folder, or the one file that was named.
 

@@ -15,17 +15,14 @@ from typing import Any
 from model.rig.digest import digest
 from model.rig.entry import FIELDS, Entry, Record
 from model.rig.errors import whole_file
+from model.rig.reading import record_path
 from model.rig.source import LARGEST_FILE, Fault, parse_toml, read_bytes, shown_path
 from model.rig.validate import validate
 from model.rig.whole import write_whole
 
+__all__ = ["append", "entry_digest", "read_record", "record_path", "render", "seal"]
+
 _ESCAPES = {"\\": "\\\\", '"': '\\"', "\n": "\\n", "\r": "\\r", "\t": "\\t"}
-
-
-def record_path(rig: Path | str) -> Path:
-    """Where the record of a rig file lies: `x.record.toml` beside `x.toml`."""
-    rig = Path(rig)
-    return rig.with_name(f"{rig.name.removesuffix('.toml')}.record.toml")
 
 
 def render(entries: Iterable[Entry]) -> str:

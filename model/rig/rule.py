@@ -6,7 +6,6 @@ key paths, and their messages know nothing of units.
 
 from collections.abc import Callable, Sequence
 from datetime import date
-from difflib import get_close_matches
 from typing import Any, Final
 
 from pydantic import BaseModel, ConfigDict, Field
@@ -84,6 +83,8 @@ def nearest(word: str, known: Sequence[str]) -> str:
     """A hint naming the nearest known word, or nothing."""
     if len(word) > 60:
         return ""
+    from difflib import get_close_matches  # only a mistake needs it
+
     near = get_close_matches(word.lower(), [name.lower() for name in known], 1, 0.6)
     return f'did you mean "{next(name for name in known if name.lower() == near[0])}"?' if near else ""
 

@@ -4,10 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from itertools import pairwise
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from model.rig.digest import Raw, full_digest, rigging_digest, tables_digest
-from model.rig.entry import Entry
+
+if TYPE_CHECKING:
+    from model.rig.entry import Entry
 
 
 class Standing(NamedTuple):
@@ -65,6 +67,8 @@ def standing(entries: Sequence[Entry], rig: Raw, limits: Raw | None) -> Standing
         rig: raw values of the rig file.
         limits: raw values of the limit set; None without one.
     """
+    if not entries:
+        return Standings({}, {}, (), frozenset())
     answers: dict[str, Entry] = {}
     deviations: dict[str, Entry] = {}
     signatures: list[Entry] = []

@@ -7,6 +7,7 @@ from collections.abc import Sequence
 
 COMMANDS = ("check", "working", "report")
 UNITS = ("written", "si", "us")
+WIDTH = 78
 EPILOG = """exit status: 0 PASS, 1 FAIL, 3 OPEN, 2 input that cannot be read or a wrong call, 130 interrupted
 without a command: full screen on a rig file or a folder
 A computed check is an estimate: local rules, the technical manual and licensed riggers go before it."""
@@ -22,7 +23,7 @@ def _screen() -> argparse.ArgumentParser:
         prog="rigslate",
         description="Checks the rigging of an airdrop load.",
         epilog=f"commands: {', '.join(COMMANDS)}; 'rigslate COMMAND --help' tells more\n{EPILOG}",
-        formatter_class=argparse.RawDescriptionHelpFormatter,
+        formatter_class=_formatter,
         allow_abbrev=False,
     )
     parser.add_argument("--version", action=_Version)
@@ -45,8 +46,13 @@ class _Version(argparse.Action):
         parser.exit(0, f"rigslate {version('rigslate')}\n")
 
 
+def _formatter(prog: str) -> argparse.RawDescriptionHelpFormatter:
+    """Help as wide as all other text: measuring the terminal, which every option would do, loads three packers."""
+    return argparse.RawDescriptionHelpFormatter(prog, width=WIDTH)
+
+
 def _commands() -> argparse.ArgumentParser:
-    parser = argparse.ArgumentParser(prog="rigslate", allow_abbrev=False)
+    parser = argparse.ArgumentParser(prog="rigslate", formatter_class=_formatter, allow_abbrev=False)
     commands = parser.add_subparsers(dest="command", required=True)
     check = _command(commands, "check", "check every rig file at or below each PATH")
     check.add_argument("paths", nargs="+", metavar="PATH", help="a rig file or a folder")
@@ -75,7 +81,7 @@ def _command(
 ) -> argparse.ArgumentParser:
     return commands.add_parser(
         name, help=help_, description=help_.capitalize() + ".", epilog=EPILOG, allow_abbrev=False,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
+        formatter_class=_formatter,
     )  # fmt: skip
 
 

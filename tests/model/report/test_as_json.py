@@ -1,5 +1,6 @@
 import json
 import math
+import tomllib
 from dataclasses import replace
 from datetime import UTC, datetime
 from pathlib import Path
@@ -8,6 +9,7 @@ import pytest
 
 from model.checks.finding import Signature
 from model.report.as_json import document, problem_object, rig_object, step_object, unreadable_object
+from model.rig.digest import full_digest, rigging_digest
 from model.rig.errors import InputProblem
 from tests.model.checks.sample import checklist
 
@@ -23,10 +25,13 @@ def test_numbers_are_not_rounded(tmp_path: Path) -> None:
 
 def test_signatures_and_stale_keys(tmp_path: Path) -> None:
     signed = Signature("RB", datetime(2026, 9, 15, 8, tzinfo=UTC), stale=True)
-    one = rig_object(replace(checklist(tmp_path), signatures=(signed,), stale=("a.b",), digests=("r", "a")))
+    whole = checklist(tmp_path)
+    one = rig_object(replace(whole, signatures=(signed,), stale=("a.b",)))
     assert one["signed"] == [{"who": "RB", "when": "2026-09-15T08:00:00+00:00", "stale": True}]
     assert one["stale"] == ["a.b"]
-    assert one["digest"] == {"rigging": "r", "all": "a"}
+    rig, limits = (tomllib.loads((tmp_path / name).read_text("utf-8")) for name in ("rig.toml", "limits.toml"))
+    assert one["digest"] == {"rigging": rigging_digest(rig, limits), "all": full_digest(rig, limits)}
+    assert rig_object(replace(whole, content=None))["digest"] == {"rigging": "", "all": ""}
 
 
 def test_a_deviation_is_its_text(tmp_path: Path) -> None:
