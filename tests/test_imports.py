@@ -14,11 +14,11 @@ MODEL = sorted(
     for path in (ROOT / "model").rglob("*.py")
     if path.name != "__init__.py"
 )
-LOADED = "\nimport sys\nprint(*sorted({name.partition('.')[0] for name in sys.modules}), file=sys.stderr)"
+LOADED = "\nimport sys\nprint(*sorted(sys.modules), file=sys.stderr)"
 
 
 def loaded(code: str, *words: str) -> set[str]:
-    """Top names of all modules that a fresh process has loaded after running ``code``."""
+    """Names of all modules that a fresh process has loaded after running ``code``."""
     done = subprocess.run(
         [sys.executable, "-c", code + LOADED, *words], capture_output=True, text=True, cwd=ROOT, check=True
     )
@@ -37,6 +37,15 @@ def test_a_check_loads_neither_screen_nor_what_writes_files(tmp_path: Path, word
     found = loaded("import sys\nfrom tui.main import main\nmain(sys.argv[1:])", *words, str(write(tmp_path)))
     assert {"pydantic", "numpy", "model"} <= found
     assert not found & {"scipy", "textual", "rich", "tomlkit", "tomli_w", "asyncio", "html"}
+    # The search for plugins, packers that argparse loads to measure a terminal, what only a mistake needs.
+    assert not found & {"pydantic.plugin._loader", "importlib.metadata", "email", "shutil", "difflib"}
+
+
+@pytest.mark.parametrize("words", [["check"], ["check", "--brief"], ["check", "--computed"]])
+def test_a_rig_without_a_record_loads_nothing_of_records(tmp_path: Path, words: list[str]) -> None:
+    found = loaded("import sys\nfrom tui.main import main\nmain(sys.argv[1:])", *words, str(write(tmp_path)))
+    assert "model.rig.standing" in found
+    assert not found & {"model.rig.record", "model.rig.entry", "model.rig.whole", "json", "tempfile"}
 
 
 def test_the_first_screen_loads_neither_engine_nor_numbers() -> None:

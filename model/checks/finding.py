@@ -123,7 +123,7 @@ class Inspection(NamedTuple):
     covers: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, eq=False)
 class Finding:
     """The result of one step.
 
@@ -169,7 +169,7 @@ class Signature(NamedTuple):
     stale: bool
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, eq=False)
 class Checklist:
     """All findings of one rig, in the order they are stepped through.
 

@@ -63,11 +63,13 @@ def steps(rig: Rig) -> list[Step]:
     return [*fixed, *tie_steps(rig), *device_steps(rig), *service_steps(rig)]
 
 
+_UNITS = {key: step.unit or "1" for step in reversed(FIXED) for key in (step.limited_by, step.key)}
+
+
 def unit_of(key: str) -> str | None:
     """The step unit that a limit key stands in; None for a key no computed step has."""
-    for step in FIXED:
-        if key in (step.key, step.limited_by):
-            return step.unit or "1"
+    if key in _UNITS:
+        return _UNITS[key]
     if key.startswith("tie.") and key.endswith((".holds", ".breaks")):
         return "N"
     return BY_ROW.get(key)

@@ -154,7 +154,7 @@ def held_together(strengths: ArrayLike, stiffnesses: ArrayLike) -> float:
     return float(stiffness.sum() * (strength / stiffness).min())
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, eq=False)
 class Row:
     """A row of equal lashings: points in m, strengths in N.
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from enum import StrEnum
 from fractions import Fraction
+from functools import lru_cache
 
 from model.quantity.text import Quantity
 from model.quantity.units import FEET_INCHES, UNITS, Dimension, from_unit
@@ -119,6 +120,7 @@ def show_quantity(
     return f"{shown} ± {show_difference(quantity.tolerance, dimension, unit, digits=digits)}"
 
 
+@lru_cache(maxsize=256)  # value and limit of a step are put into words one after the other
 def show_apart(value: float, bound: float, dimension: Dimension, unit: str, *, digits: int = 4) -> tuple[str, str]:
     """Two values with enough digits that the texts compare as the values do.
 
