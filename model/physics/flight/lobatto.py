@@ -14,6 +14,8 @@ from numpy.polynomial import legendre
 from numpy.typing import NDArray
 
 Array = NDArray[np.float64]
+FEW = 20
+"""Of so few points powers are taken one by one: the number of calls counts, not that of the points."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -71,6 +73,8 @@ def lobatto(nodes: int, grade: int = 1) -> Lobatto:
 
 def power_table(x: Array, count: int) -> Array:
     """Powers 0 .. count - 1 of x (cases,) as an array (count, cases)."""
+    if len(x) < FEW:
+        return x ** np.arange(float(count))[:, None]
     table = np.empty((count, len(x)))
     table[0] = 1
     for i in range(1, count):
@@ -95,6 +99,8 @@ def root_after(nodes: Lobatto, values: Array, left: NDArray[np.intp], steps: int
 
     The answer never leaves that interval; where there is no change of sign it is some point of it.
     """
+    if values.shape[1] == 1:
+        return np.array([_root_of_one(nodes, values[:, 0], int(left[0]), steps)])
     case = np.arange(values.shape[1])
     low, high = nodes.x[left], nodes.x[left + 1]
     at_low, at_high = values[left, case], values[left + 1, case]
@@ -108,4 +114,27 @@ def root_after(nodes: Lobatto, values: Array, left: NDArray[np.intp], steps: int
         low, high = np.where(before, x, low), np.where(before, high, x)
         x = x - value / dot(slopes, table[:-1])
         x = np.where((x >= low) & (x <= high), x, 0.5 * (low + high))
+    return x
+
+
+def _root_of_one(nodes: Lobatto, values: Array, left: int, steps: int) -> float:
+    """`root_after` for one case: the same on plain numbers, which are quicker than arrays of one."""
+    low, high = float(nodes.x[left]), float(nodes.x[left + 1])
+    at_low, at_high = float(values[left]), float(values[left + 1])
+    x = 0.5 * (low + high)
+    if at_low != at_high:
+        x = min(high, max(low, low + (high - low) * (at_low / (at_low - at_high))))     # low where it is nan
+    series: list[float] = (nodes.powers @ values).tolist()
+    for _ in range(steps):
+        value = slope = 0.0
+        for coefficient in reversed(series):
+            slope = slope * x + value
+            value = value * x + coefficient
+        if value * at_low > 0:
+            low = x
+        else:
+            high = x
+        x = x - value / slope if slope else low - 1
+        if not low <= x <= high:
+            x = 0.5 * (low + high)
     return x

@@ -15,8 +15,8 @@ from .pieces import AreaAt, Piece, Workshop
 from .state import Growth, Load, Mask, State
 from .wind import Layer, Wind
 
-NODES, FEW_NODES = 14, 7
-"""Nodes of a piece; of a short free fall and of a glide."""
+NODES, FEW_NODES, MANY_NODES = 14, 7, 24
+"""Nodes of a piece; of a short free fall and of a glide; of a long filling."""
 GRADE = 2
 """Grade of the first piece of a filling with a fractional exponent."""
 MORE_LEGS = 300
@@ -83,6 +83,8 @@ class Flyer:
             span = left if layer.slope is None else self._within_layer(state, course, layer.slope, floor, left)
             growth = Growth(course.base, course.added, course.exponent, begin, span)
             leg = self._leg(state, replace(course, floor=floor), span * course.full, growth, layer, watch)
+            if self.workshop.effort < 0:
+                return self._give_up(leg, progress, flying)
             progress = np.where(flying & (leg.progress == 1) & (span == left), end, progress + span * leg.progress)
             state, begin = leg.state, progress
             at_event = at_event | leg.at_event
@@ -95,6 +97,12 @@ class Flyer:
         state = state.with_error(np.where(flying, np.inf, 0.0))
         landed = state.landed | at_floor & (course.floor <= self.ground)
         return Stop(replace(state, landed=landed), progress, at_floor, at_event)
+
+    def _give_up(self, leg: Stop, progress: Array, flying: Mask) -> Stop:
+        """What flies is lost, and nothing more is done for it."""
+        state = leg.state.with_error(np.where(flying, np.inf, 0.0))
+        nowhere = np.zeros_like(flying)
+        return Stop(replace(state, landed=state.landed | flying), progress, nowhere, nowhere)
 
     def _within_layer(self, state: State, course: Course, slope: Array, floor: Array, span: Array) -> Array:
         """Shorter spans where a steep wind, followed far below its layer, would carry the load off."""
@@ -127,7 +135,7 @@ class Flyer:
             stopped = flying & (fraction < 1)
             at_event, at_floor = at_event | stopped & by_event, at_floor | stopped & ~by_event
             flying = flying & ~stopped
-            if not flying.any():
+            if not flying.any() or self.workshop.effort < 0:
                 break
         return Stop(state, reached, at_floor, at_event)
 

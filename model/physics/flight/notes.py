@@ -180,7 +180,7 @@ class Notes:
         for index, record in enumerate(self.flat):
             landed_in = np.where(record.started, 2 * index + ~record.landed_in, landed_in)
         last = self.flat[-1]
-        error = np.where(state.landed, state.error, np.inf)
+        error = np.where(state.landed & ~np.isnan(state.error), state.error, np.inf)
         return found | {
             "slow_time": self.slow_time, "slow_height": self.slow_height, "touchdown_time": state.t,
             "touchdown_distance": state.x, "touchdown_speed": state.speed, "touchdown_descent": state.w,

@@ -9,17 +9,17 @@ import numpy as np
 from .glide import glide
 from .inputs import Drop, Filling, FillingRule, Row, as_array
 from .lobatto import Array
-from .march import FEW_NODES, NODES, Course, Event, Flyer
+from .march import FEW_NODES, MANY_NODES, NODES, Course, Event, Flyer
 from .notes import Columns, Notes
 from .pieces import Piece
 from .state import Mask, State
 from .track import Track
 from .trigger import NextRow
 
-FILLING_SPAN = 4.0
-"""Longest piece of a filling, in units of V/g at the steady rate of descent; by distance in units of 1/k."""
 SPAN = 4.0
-"""The same for a hold."""
+"""Longest piece, in units of V/g at the steady rate of descent; of a filling by distance in units of 1/k."""
+LONG_SPAN = 10.0
+"""The same with many nodes, in which a filling is flown that does not fit one piece of the usual kind."""
 TOLERANCE = 5e-7
 """Accepted estimate of the relative error."""
 HOLD_PIECES = 4000
@@ -137,7 +137,7 @@ class Flight:
         full = np.maximum(as_array(filling.fill_distance), LEAST) if by_distance else nominal
         added = as_array(filling.area) - own
         course = Course(full, ahead.floor, total, added, filling.exponent, by_distance)
-        course = replace(course, pieces=self.filling_pieces(state, course, start))
+        course = self.divide(course, state, start)
         watch = notes.watch_filling(record, number, filling, total - own)
         progress, begin, going = np.zeros(self.cases), None, start
         for _ in range(2):              # once more where the next row starts on the way, at its height
@@ -161,8 +161,8 @@ class Flight:
             return np.maximum(as_array(filling.filling_time), LEAST)
         return np.maximum(as_array(filling.fill_distance) / np.maximum(state.speed, LEAST), LEAST)
 
-    def filling_pieces(self, state: State, course: Course, start: Mask) -> int:
-        """How many pieces a filling needs at most, over the cases that fill."""
+    def divide(self, course: Course, state: State, start: Mask) -> Course:
+        """A filling in as many pieces as it needs at most, over the cases that fill."""
         area = course.base + (0.0 if course.added is None else course.added)
         if course.distance:
             spans = course.full * self.air(state.z) * (area + self.load.drag_area) / self.load.doubled_mass
@@ -170,7 +170,11 @@ class Flight:
         else:
             rate = self.rate(state.z, area)
             spans = np.minimum(course.full, self.longest(state, rate)) * rate
-        return self.pieces * _count(np.where(start, spans, 0.0), FILLING_SPAN)
+        spans = np.where(start, spans, 0.0)
+        few = _count(spans, SPAN)
+        if few == 1 or course.exponent % 1:     # more nodes do not follow a fractional power better
+            return replace(course, pieces=self.pieces * few)
+        return replace(course, pieces=self.pieces * _count(spans, LONG_SPAN), nodes=MANY_NODES)
 
     def hold(self, state: State, until: Array, ahead: NextRow, last: bool) -> State:
         """Constant area until a time, the next row or the ground; ``last``: look for the moment of slow descent."""

@@ -27,7 +27,7 @@ from .wind import Layer
 ITERATIONS = 16
 CONVERGED = 1.5e-7
 """Iterations end when the next change is estimated to be less, relative."""
-SETUP = 3
+SETUP = 5
 """Iterations that cost as much as all else about a piece."""
 
 AreaAt = Callable[[Array], Array]

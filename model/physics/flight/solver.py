@@ -25,7 +25,7 @@ CHUNK = 8192
 """Cases flown at once."""
 BELOW_GROUND = 100.0
 """m; the density is known so far below the ground, where pieces end before they are cut off."""
-EFFORT = 3000
+EFFORT = 2000
 """Most work on one case, in iterations of a piece and alike. Flights that can be solved take a tenth or less."""
 COMPANY = 8
 """Cases flown together differ and need more pieces than each alone: the work on a batch is at most so many times

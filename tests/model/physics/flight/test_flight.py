@@ -59,7 +59,7 @@ def test_more_pieces_change_nothing(rule: FillingRule, monkeypatch: pytest.Monke
     from model.physics.flight import phases
     drop = cloud(rows(RIGS[2], DROGUE, MAIN, release_height=1500), 20, 5)
     plain = solve(drop, rule)
-    monkeypatch.setattr(phases, "FILLING_SPAN", 1.5)
+    monkeypatch.setattr(phases, "LONG_SPAN", 4.0)
     monkeypatch.setattr(phases, "SPAN", 1.5)
     fine = solve(drop, rule)
     assert plain.opening_force == pytest.approx(fine.opening_force, rel=1e-6)
@@ -72,6 +72,42 @@ def test_a_case_that_is_not_solved_is_reported() -> None:
     motion = solve(from_rest, "distance")
     assert list(motion.accurate) == [False, True]
     assert motion.error[0] > 1e-6 > motion.error[1]
+
+
+@pytest.mark.parametrize("rule", RULES)
+@pytest.mark.parametrize(("name", "change"), [
+    ("no mass", {"mass": 0.0}), ("unknown mass", {"mass": float("nan")}), ("no gravity", {"gravity": 0.0}),
+    ("from space", {"release_height": 1e7}), ("negative density", {"density": lambda z: z * 0 - 1.0}),
+    ("unknown density near the ground", {"density": lambda z: np.where(z < 100, np.nan, isa(z))}),
+    ("density that jumps", {"density": lambda z: isa(z) * (1 + 0.2 * np.sign(np.sin(z)))}),
+    ("negative area", {"rows": (Row((Filling(-5.0, 100.0),), line_stretch=2.0),)}),
+    ("endless filling", {"rows": (Row((Filling(233.0, 1e9),), line_stretch=2.0),)}),
+    ("endless area", {"rows": (Row((Filling(np.inf, 100.0),), line_stretch=2.0),)}),
+])
+def test_a_case_that_cannot_be_solved_is_given_up_soon(
+    name: str, change: dict[str, Any], rule: FillingRule, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    from model.physics.flight.march import Flyer
+    solve_piece, pieces = Flyer._solve, []
+
+    def counted(self: Flyer, *args: Any) -> Any:
+        pieces.append(1)
+        return solve_piece(self, *args)
+
+    monkeypatch.setattr(Flyer, "_solve", counted)
+    motion = solve(replace(RIGS[2], **change), rule)
+    assert not motion.accurate[0], name
+    assert motion.error[0] > 1e-6
+    assert len(pieces) < 300
+
+
+def test_a_hopeless_case_does_not_spoil_the_rest() -> None:
+    heights, mass = np.array([400.0, 400.0, 500.0]), np.array([1000.0, 0.0, 1000.0])
+    motion = solve(replace(RIGS[2], release_height=heights, mass=mass), "distance")
+    assert list(motion.accurate) == [True, False, True]
+    alone = solve(RIGS[2], "distance")
+    assert motion.opening_force[0, 0] == pytest.approx(alone.opening_force[0, 0], rel=1e-6)
+    assert motion.touchdown_time[0] == pytest.approx(alone.touchdown_time[0], rel=2e-6)
 
 
 def test_a_wild_density_is_reported_and_does_not_spoil_the_rest() -> None:
