@@ -81,8 +81,11 @@ class _System:
             self.linearise()
         np.multiply(P, self.jacobian[:, None], out=scratch)
         np.subtract(drive, scratch, out=scratch)
-        np.matmul(self.newton, scratch, out=P)
-        P += self.from_start * self.start.w
+        if P.shape[1] == 1:
+            P[:] = np.linalg.solve(self.newton, self.nodes.integral @ scratch + self.start.w)
+        else:
+            np.matmul(self.newton, scratch, out=P)
+            P += self.from_start * self.start.w
         _speed(P, self.U, H, scratch)
         np.divide(P, H, out=scratch)
         np.matmul(self.nodes.integral, scratch, out=self.z)
@@ -97,7 +100,10 @@ class _System:
         """Matrices from what the mean Jacobian leaves of dP / dsigma, and P at the start, to P at all nodes."""
         few, nodes = self.few, self.nodes
         self.jacobian = mean_of(-self.drive[:, few] * self.P[:, few] / self.H[:, few] ** 2)
-        inverse = np.asarray(np.linalg.inv(nodes.one - nodes.integral * self.jacobian))
+        self.newton = nodes.one - nodes.integral * self.jacobian
+        if self.P.shape[1] == 1:        # solved as it is: one case does not pay for an inverse
+            return
+        inverse = np.asarray(np.linalg.inv(self.newton))
         self.newton, self.from_start = inverse @ nodes.integral, inverse.sum(1, keepdims=True)
 
 

@@ -82,7 +82,8 @@ class Flyer:
             left = np.where(flying, end - progress, 0.0)
             span = left if layer.slope is None else self._within_layer(state, course, layer.slope, floor, left)
             growth = Growth(course.base, course.added, course.exponent, begin, span)
-            leg = self._leg(state, replace(course, floor=floor), span * course.full, growth, layer, watch)
+            in_layer = replace(course, floor=floor) if self.wind.layered else course
+            leg = self._leg(state, in_layer, span * course.full, growth, layer, watch)
             if self.workshop.effort < 0:
                 return self._give_up(leg, progress, flying)
             progress = np.where(flying & (leg.progress == 1) & (span == left), end, progress + span * leg.progress)
@@ -94,9 +95,9 @@ class Flyer:
             flying = (kink | flying & (span < left) & ~leg.at_event & ~low) & (progress < end)
             if self.wind.layered:
                 state = replace(state, layer=state.layer + kink)
-        state = state.with_error(np.where(flying, np.inf, 0.0))
         landed = state.landed | at_floor & (course.floor <= self.ground)
-        return Stop(replace(state, landed=landed), progress, at_floor, at_event)
+        state = replace(state, landed=landed, error=np.where(flying, np.inf, state.error))
+        return Stop(state, progress, at_floor, at_event)
 
     def _give_up(self, leg: Stop, progress: Array, flying: Mask) -> Stop:
         """What flies is lost, and nothing more is done for it."""

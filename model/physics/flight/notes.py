@@ -175,7 +175,7 @@ class Notes:
         found: Columns = {}
         for records in (self.rows, self.flat):
             columns = [record.columns() for record in records]
-            found |= {name: np.stack([column[name] for column in columns]) for name in columns[0]}
+            found |= {name: np.array([column[name] for column in columns]) for name in columns[0]}
         landed_in = np.full(self.cases, -1, np.intp)
         for index, record in enumerate(self.flat):
             landed_in = np.where(record.started, 2 * index + ~record.landed_in, landed_in)
