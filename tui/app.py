@@ -221,9 +221,9 @@ class RigslateApp(App[int], inherit_bindings=False):
         for screen in self._screens():
             screen.remedied(message)
 
-    def ask_working(self, request: int, finding: Finding) -> None:
+    def ask_working(self, request: int, checklist: Checklist, finding: Finding) -> None:
         """Have the lines of a working made."""
-        self._tasks.working(request, finding, self.system)
+        self._tasks.working(request, checklist, finding, self.system)
 
     def on_worked(self, message: Worked) -> None:
         """Hand on the lines of a working."""

@@ -16,6 +16,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
     words = list(sys.argv[1:] if arguments is None else arguments)
     # The models take no plugins; looking for them would cost more than writing an entry.
     os.environ.setdefault("PYDANTIC_DISABLE_PLUGINS", "__all__")
+    # Every system of equations here is small: starting threads for the linear algebra costs more than it gives.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     _plain_streams()
     try:
         status = _run(words)

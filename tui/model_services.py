@@ -80,11 +80,12 @@ class ModelServices:
 
         return tuple(Remedy(*found) for found in what_would_pass(finding, system))
 
-    def working(self, finding: Finding, system: UnitSystem) -> list[str]:
+    def working(self, checklist: Checklist, finding: Finding, system: UnitSystem) -> list[str]:
         """The lines that lead to a computed step's number."""
+        from model.report.other_methods import other_methods_lines
         from model.report.working import working_text
 
-        return working_text(finding, system)
+        return [*working_text(finding, system), *other_methods_lines(finding, checklist.details, system)]
 
     def write(self, rig: Path, checklist: Checklist, draft: Draft, when: datetime) -> None:
         """Append an answer or a withdrawal to the record beside the rig."""

@@ -73,8 +73,8 @@ class Services(Protocol):
     def remedies(self, finding: Finding, system: UnitSystem) -> tuple[Remedy, ...]:
         """What would make a failing step pass."""
 
-    def working(self, finding: Finding, system: UnitSystem) -> list[str]:
-        """The lines that lead to a computed step's number."""
+    def working(self, checklist: Checklist, finding: Finding, system: UnitSystem) -> list[str]:
+        """The lines that lead to a computed step's number, and what other methods give."""
 
     def write(self, rig: Path, checklist: Checklist, draft: Draft, when: datetime) -> None:
         """Append an answer or a withdrawal to the record beside the rig.

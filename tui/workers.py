@@ -134,12 +134,12 @@ class Workers:
 
         self._start(work, "remedies")
 
-    def working(self, request: int, finding: Finding, system: UnitSystem) -> None:
+    def working(self, request: int, checklist: Checklist, finding: Finding, system: UnitSystem) -> None:
         """Make the lines of a working."""
 
         def work() -> None:
             try:
-                lines = tuple(self._services.working(finding, system))
+                lines = tuple(self._services.working(checklist, finding, system))
             except Exception as error:
                 lines = (unexpected(error),)
             self._app.post_message(Worked(request, lines, system))

@@ -136,7 +136,7 @@ class FakeServices:
         """One remedy."""
         return (Remedy("rigged mass below", "2,024 lb", "2,150 lb"), Remedy("drop zone below", "-120 ft", "1,640 ft"))
 
-    def working(self, finding: Finding, system: UnitSystem) -> list[str]:
+    def working(self, checklist: Checklist, finding: Finding, system: UnitSystem) -> list[str]:
         """Some lines."""
         return [f"line {number} of {finding.key} in {system}" for number in range(1, 41)]
 

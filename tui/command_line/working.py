@@ -11,6 +11,7 @@ from model.checks.finding import Finding
 from model.quantity import UnitSystem
 from model.report import wording
 from model.report.load_path import load_path_lines
+from model.report.other_methods import other_methods_lines
 from model.report.working import working_text
 from model.rig.errors import InputError
 from model.rig.rule import nearest
@@ -33,7 +34,8 @@ def run(options: argparse.Namespace) -> int:
         hint = nearest(options.key, [one.key for one in checklist.findings])
         print(f"{options.rig}: no step {options.key!r}" + (f"; {hint}" if hint else ""), file=sys.stderr)
         return status.UNREADABLE
-    print("\n".join(_lines(found, UnitSystem(options.units))))
+    system = UnitSystem(options.units)
+    print("\n".join([*_lines(found, system), *other_methods_lines(found, checklist.details, system)]))
     return 0
 
 

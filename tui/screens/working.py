@@ -12,7 +12,7 @@ from tui.screens.base import bindings
 from tui.screens.text import TextScreen
 
 if TYPE_CHECKING:
-    from model.checks.finding import Finding
+    from model.checks.finding import Checklist, Finding
 
 
 class WorkingScreen(TextScreen):
@@ -41,16 +41,20 @@ class WorkingScreen(TextScreen):
         self._request += 1
         if self.slate.book.under_way(self._rig):
             return
-        finding = self._finding
-        if finding is None or finding.result is None:
+        checklist, finding = self._checklist, self._finding
+        if checklist is None or finding is None or finding.result is None:
             self._note = "there is no number to work out now"
             return
-        self.slate.ask_working(self._request, finding)
+        self.slate.ask_working(self._request, checklist, finding)
+
+    @property
+    def _checklist(self) -> Checklist | None:
+        entry = self.slate.shelf.entries.get(self._rig)
+        return entry.checklist if entry is not None else None
 
     @property
     def _finding(self) -> Finding | None:
-        entry = self.slate.shelf.entries.get(self._rig)
-        checklist = entry.checklist if entry is not None else None
+        checklist = self._checklist
         return next((one for one in checklist.findings if one.key == self._key), None) if checklist else None
 
     def worked(self, message: Worked) -> None:
