@@ -57,3 +57,16 @@ def test_the_first_screen_loads_neither_engine_nor_numbers() -> None:
 def test_asking_for_help_loads_no_model() -> None:
     code = "from tui.main import main\ntry:\n    main(['check', '--help'])\nexcept SystemExit:\n    pass"
     assert not loaded(code) & {"pydantic", "numpy", "textual", "model"}
+
+
+@pytest.mark.parametrize(("own", "expected"), [(None, "1"), ("3", "3")])
+def test_the_linear_algebra_gets_one_thread_unless_somebody_asked_for_more(
+    tmp_path: Path, monkeypatch: pytest.MonkeyPatch, own: str | None, expected: str
+) -> None:
+    monkeypatch.delenv("OPENBLAS_NUM_THREADS", raising=False)
+    if own is not None:
+        monkeypatch.setenv("OPENBLAS_NUM_THREADS", own)
+    code = "import os, sys\nfrom tui.main import main\nmain(sys.argv[1:])\nprint(os.environ['OPENBLAS_NUM_THREADS'])"
+    command = [sys.executable, "-c", code, "check", "--brief", str(write(tmp_path))]
+    done = subprocess.run(command, capture_output=True, text=True, cwd=ROOT, check=True)
+    assert done.stdout.splitlines()[-1] == expected
