@@ -7,6 +7,8 @@ from collections.abc import Sequence
 
 COMMANDS = ("check", "working", "report")
 UNITS = ("written", "si", "us")
+UNREADABLE = 2
+"""Exit status of a wrong call and of input that cannot be read."""
 WIDTH = 78
 EPILOG = """exit status: 0 PASS, 1 FAIL, 3 OPEN, 2 input that cannot be read or a wrong call, 130 interrupted
 without a command: full screen on a rig file or a folder

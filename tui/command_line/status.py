@@ -7,8 +7,8 @@ from collections.abc import Iterable
 
 from model.checks.finding import Verdict
 from model.rig.errors import InputProblem
+from tui.command_line.arguments import UNREADABLE
 
-UNREADABLE = 2
 OF_VERDICT = {Verdict.PASS: 0, Verdict.FAIL: 1, Verdict.OPEN: 3}
 
 
