@@ -9,6 +9,7 @@ from model.checks.finding import Verdict
 from model.rig.errors import InputProblem
 from tui.command_line.arguments import UNREADABLE
 
+__all__ = ["OF_VERDICT", "UNREADABLE", "complain", "of"]
 OF_VERDICT = {Verdict.PASS: 0, Verdict.FAIL: 1, Verdict.OPEN: 3}
 
 
