@@ -6,7 +6,7 @@ fades in closed form. It costs the same for ten metres and for ten kilometres.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -81,13 +81,16 @@ def glide(
     error += neglected * steady[0] / (g * t[-1]) + 0.1 * neglected * left[-1]      # in time, and in speed at the end
     pressure = 0.5 * density * (u * u + w * w)
     end = State(t[-1], x[-1], z[-1], u[-1], w[-1], start.error, start.landed, start.layer)
-    early = t[-1] > until
-    result = Glide(nodes, end, t, x, z, u, w, pressure, error, ~early)
-    if early.any():
-        first = (t >= until).argmax(0)
-        at = root_after(nodes, t - until, np.clip(first - 1, 0, count - 2))
-        values = zip(values_at(nodes, at, t, x, z, u, w), (t, x, z, u, w), strict=True)
-        time, way, height, along, down = (np.where(early, inside, history[-1]) for inside, history in values)
-        cut = State(time, way, height, along, down, start.error, start.landed, start.layer)
-        result = Glide(nodes, cut, t, x, z, u, w, pressure, error, ~early)
-    return result
+    late = t[-1] > until
+    result = Glide(nodes, end, t, x, z, u, w, pressure, error, ~late)
+    return _cut_short(result, until, late) if late.any() else result
+
+
+def _cut_short(glide: Glide, until: Array, late: Mask) -> Glide:
+    """A glide that ends at a time, s, in the cases ``late``."""
+    histories, old = (glide.t, glide.x, glide.z, glide.u, glide.w), glide.end
+    first = (glide.t >= until).argmax(0)
+    at = root_after(glide.nodes, glide.t - until, np.clip(first - 1, 0, len(glide.t) - 2))
+    inside = values_at(glide.nodes, at, *histories)
+    t, x, z, u, w = (np.where(late, value, history[-1]) for value, history in zip(inside, histories, strict=True))
+    return replace(glide, end=State(t, x, z, u, w, old.error, old.landed, old.layer))

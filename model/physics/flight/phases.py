@@ -19,7 +19,9 @@ from .trigger import NextRow
 SPAN = 4.0
 """Longest piece, in units of V/g at the steady rate of descent; of a filling by distance in units of 1/k."""
 LONG_SPAN = 10.0
-"""The same with many nodes, in which a filling is flown that does not fit one piece of the usual kind."""
+"""The same with many nodes; a single case needs fewer calls so, and calls are all it costs."""
+MANY_PIECES = 4
+"""A batch takes them for a filling of more pieces of the usual kind than that."""
 TOLERANCE = 5e-7
 """Accepted estimate of the relative error."""
 HOLD_PIECES = 4000
@@ -171,9 +173,10 @@ class Flight:
             rate = self.rate(state.z, area)
             spans = np.minimum(course.full, self.longest(state, rate)) * rate
         spans = np.where(start, spans, 0.0)
-        few = _count(spans, SPAN)
-        if few == 1 or course.exponent % 1:     # more nodes do not follow a fractional power better
-            return replace(course, pieces=self.pieces * few)
+        usual = _count(spans, SPAN)
+        enough = 1 if self.cases == 1 else MANY_PIECES
+        if usual <= enough or course.exponent % 1:      # more nodes do not follow a fractional power better
+            return replace(course, pieces=self.pieces * usual)
         return replace(course, pieces=self.pieces * _count(spans, LONG_SPAN), nodes=MANY_NODES)
 
     def hold(self, state: State, until: Array, ahead: NextRow, last: bool) -> State:
