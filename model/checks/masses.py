@@ -46,6 +46,7 @@ class Masses:
     def __init__(self, rig: Rig) -> None:
         self.rig = rig
         self.left_out = {entry.part for entry in rig.left_out}
+        self._bare_centre: dict[int, Term] = {}
 
     @cached_property
     def platform(self) -> Term | None:
@@ -218,6 +219,11 @@ class Masses:
 
     def centre_without_canopies(self, axis: int) -> Term:
         """One coordinate of the centre of gravity of platform and items alone."""
+        if axis not in self._bare_centre:
+            self._bare_centre[axis] = self._centre_without_canopies(axis)
+        return self._bare_centre[axis]
+
+    def _centre_without_canopies(self, axis: int) -> Term:
         name = f"{AXES[axis]}g"
         if self.balanced and axis < 2:
             masses, places = self._places(axis, canopies=True)
