@@ -54,7 +54,7 @@ def _fit(density: Density, low: float, high: float) -> list[float] | None:
     for degree in range(3, 10):
         at, inverse = _chebyshev(degree)
         series = inverse @ np.asarray(density(middle + half * at), float)
-        if np.abs(np.polynomial.polynomial.polyval(probe, series) / exact - 1).max() < CLOSE:
+        if np.abs(np.polyval(series[::-1], probe) / exact - 1).max() < CLOSE:
             return [float(c) for c in series / half ** np.arange(degree + 1)]
     return None
 

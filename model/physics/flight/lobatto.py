@@ -10,7 +10,6 @@ from dataclasses import dataclass
 from functools import cache
 
 import numpy as np
-from numpy.polynomial import legendre
 from numpy.typing import NDArray
 
 Array = NDArray[np.float64]
@@ -53,12 +52,11 @@ class Lobatto:
 @cache
 def lobatto(nodes: int, grade: int = 1) -> Lobatto:
     """The constants for so many nodes (at least 4) and a grade (1: even)."""
-    inner = legendre.Legendre.basis(nodes - 1).deriv().roots()
-    x = np.concatenate(([-1.0], np.sort(np.real(inner)), [1.0])).astype(float)
-    to_legendre: Array = np.linalg.inv(legendre.legvander(x, nodes - 1))
-    each = np.eye(nodes)
-    integral = np.stack([legendre.legval(x, legendre.legint(one, lbnd=-1)) for one in each], 1) @ to_legendre / 2
-    slope = np.stack([legendre.legval(x, legendre.legder(one)) for one in each], 1) @ to_legendre * 2
+    x = _places(nodes)
+    values, integrals, slopes = _legendre(x)
+    to_legendre = np.asarray(np.linalg.inv(values), np.float64)
+    integral: Array = integrals @ to_legendre / 2
+    slope: Array = slopes @ to_legendre * 2
     theta = (x + 1) / 2
     tau, stretch = theta**grade, grade * theta ** (grade - 1)
     integral = integral * stretch
@@ -69,6 +67,33 @@ def lobatto(nodes: int, grade: int = 1) -> Lobatto:
         x, tau[:, None], stretch[:, None], integral, twice, slope, powers, to_legendre[-2:].copy(), np.eye(nodes),
         with_start, grade,
     )
+
+
+def _places(nodes: int) -> Array:
+    """The nodes: both ends and the extrema of the Legendre polynomial of degree nodes - 1.
+
+    The extrema are the zeros of a Jacobi polynomial: the eigenvalues of a tridiagonal matrix (Golub, Welsch 1969).
+    """
+    k = np.arange(1.0, nodes - 2)
+    beside = np.sqrt(k * (k + 2) / ((2 * k + 1) * (2 * k + 3)))
+    inner = np.linalg.eigvalsh(np.diag(beside, 1) + np.diag(beside, -1))
+    half = (inner - inner[::-1]) / 2  # the nodes lie alike on both sides of 0
+    x: Array = np.concatenate(([-1.0], half, [1.0]))
+    return x
+
+
+def _legendre(x: Array) -> tuple[Array, Array, Array]:
+    """Legendre polynomials of degree 0 .. len(x) - 1 at x: values, integrals from -1, slopes; a column a degree."""
+    count = len(x)
+    values, slopes = np.ones((count, count + 1)), np.zeros((count, count + 1))
+    values[:, 1], slopes[:, 1] = x, 1.0
+    for k in range(1, count):
+        values[:, k + 1] = ((2 * k + 1) * x * values[:, k] - k * values[:, k - 1]) / (k + 1)
+        slopes[:, k + 1] = slopes[:, k - 1] + (2 * k + 1) * values[:, k]
+    integrals = np.empty((count, count))
+    integrals[:, 0] = x + 1
+    integrals[:, 1:] = (values[:, 2:] - values[:, :-2]) / (2 * np.arange(1.0, count) + 1)
+    return values[:, :-1], integrals, slopes[:, :-1]
 
 
 def power_table(x: Array, count: int) -> Array:
