@@ -60,7 +60,7 @@ def lobatto(nodes: int, grade: int = 1) -> Lobatto:
     theta = (x + 1) / 2
     tau, stretch = theta**grade, grade * theta ** (grade - 1)
     integral = integral * stretch
-    powers = np.linalg.inv(np.vander(x, increasing=True))
+    powers = np.asarray(np.linalg.inv(np.vander(x, increasing=True)), np.float64)
     twice = integral @ integral
     with_start = np.column_stack((twice, np.ones(nodes), tau))
     return Lobatto(
