@@ -5,6 +5,7 @@ from __future__ import annotations
 import os
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
+from functools import lru_cache
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -66,7 +67,7 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
     problems: list[InputProblem] = []
     rulings: Mapping[str, Ruling] = {}
     try:
-        rulings = _rulings(loaded)
+        rulings = _rulings(limits)
     except InputError as error:
         problems += error.problems
     problems += verify(rig_file)
@@ -128,11 +129,12 @@ def _left_out_notes(case: Case, findings: Sequence[Finding]) -> list[str]:
     return notes
 
 
-def _rulings(loaded: Loaded) -> Mapping[str, Ruling]:
+@lru_cache(maxsize=8)
+def _rulings(limits: LimitFile | None) -> Mapping[str, Ruling]:
     """What the limit set says, by limit key, in step units."""
-    if loaded.limits is None:
+    if limits is None:
         return {}
-    bounds = resolve(loaded.limits, registry.dimension_of, registry.known_keys())
+    bounds = resolve(limits, registry.dimension_of, registry.known_keys())
     return {key: _ruling(key, one) for key, one in bounds.items()}
 
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 import os
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
+from functools import lru_cache
 from pathlib import Path
 from typing import Any, NamedTuple
 
@@ -12,7 +13,7 @@ from model.rig.errors import InputError, InputProblem, whole_file
 from model.rig.limits import LimitFile, LimitSet, limit_faults
 from model.rig.rig import Rig
 from model.rig.rules import rig_faults
-from model.rig.source import TomlFile, read_toml, refuse_other_kinds, shown_path
+from model.rig.source import TomlFile, parse_toml, read_bytes, read_toml, refuse_other_kinds, shown_path
 from model.rig.validate import validate
 
 RECORD_SUFFIX = ".record.toml"
@@ -75,7 +76,14 @@ def read_limits(path: Path | str) -> LimitFile:
     Raises:
         InputError: with every mistake of the file.
     """
-    file = read_toml(Path(path))
+    path = Path(path)
+    return _limit_file(path, read_bytes(path))
+
+
+@lru_cache(maxsize=8)
+def _limit_file(path: Path, data: bytes) -> LimitFile:
+    """The limit set of these bytes; a folder of rigs names one set many times over."""
+    file = parse_toml(path, data)
     refuse_other_kinds(file, "set")
     return LimitFile(file.path, file.text, file.raw, validate(file, LimitSet, limit_faults))
 
