@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from functools import cached_property
 
 from model.checks.masses import Masses
@@ -157,7 +158,16 @@ class Forces:
                 if any(not bool(m.started[number, 0]) and not bool(m.landed_early[0]) for m in motions):
                     found.append(f"{name} never starts, the next row opens first")
                 number += 1
-        return (*found, *self.unused())
+        return (*found, *self._beside(), *self.unused())
+
+    def _beside(self) -> Iterator[str]:
+        """Cautions for measured forces of a row that opens while an earlier one still pulls."""
+        staying = ""
+        for one in self.motions.rows:
+            if staying and self.measured(one) is not None:
+                yield f"{one.name}: measured force taken as it is, without the pull of {staying}, which stays"
+            if one.row.when_next_opens == "stays":
+                staying = one.name
 
     def _in_class(self, one: CanopyRow) -> bool:
         loading = float(canopy.canopy_loading(self.masses.suspended.value, one.full_area.value))

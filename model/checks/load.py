@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from model.checks.case import Case
 from model.checks.missing import Missing
-from model.checks.step import Outcome, Step, own_limit
+from model.checks.step import Outcome, Row, Step, own_limit
 from model.checks.term import SAME, Term, combine, derive, given, known, read, total
 from model.physics import balance
 
@@ -60,18 +60,18 @@ def _length(case: Case) -> Outcome:
 
 
 def _per_canopy(case: Case) -> Outcome:
+    """The load of each main canopy, against every row's own rating and the limit set."""
     mains = [one for one in case.rows if one.row.role == "main"]
     if not mains:
         raise Missing("canopy with role main")
     counts = [one.count for one in mains]
     count = counts[0] if len(counts) == 1 else total(counts, "N", "main canopies")
     each = derive(balance.mass_per_canopy, case.masses.suspended, count, unit=case.masses.suspended.unit)
-    limits = []
+    rows = []
     for one in mains:
-        if one.row.rated_mass is not None:
-            least, most = one.row.rated_mass
-            limits.append(own_limit("kg", least, most))
-    return Outcome(each, tuple(limits))
+        limits = (own_limit("kg", *one.row.rated_mass),) if one.row.rated_mass is not None else ()
+        rows.append(Row(each, limits, one.field("rated_mass")))
+    return Outcome(each, rows=tuple(rows))
 
 
 STEPS = (

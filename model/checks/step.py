@@ -13,6 +13,7 @@ from model.checks.term import Term
 from model.quantity import Quantity
 
 NO_NUMBER = "no number comes out of these data"
+ONE_SIDED = "below 0 and the limit has no minimum: nothing holds it on this side"
 
 
 class Row(NamedTuple):
@@ -148,6 +149,9 @@ def judge(step: Step, case: Case, ruling: Ruling) -> Finding:
     said = [*outcome.cautions, *outcome.result.cautions]
     if margin is not None and 0 <= margin < CLOSE and verdict is Verdict.PASS:
         said.insert(0, f"margin under {CLOSE:.0%}")
+    if limit is not None and limit.minimum is None and value < 0 and verdict is Verdict.PASS:
+        # A step with a sign, such as forward and aft, needs a bound on either side.
+        said.insert(0, ONE_SIDED)
     return Finding(
         key=step.key,
         title=step.title,

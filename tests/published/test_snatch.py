@@ -42,7 +42,7 @@ def test_line_convergence(ratio: float, angle: float, factor: float) -> None:
 
 
 def test_line_convergence_of_a_35_ft_troop_canopy() -> None:
-    # Maker's sheet of the T-10: inflated diameter 25.7 ft, lines 25 ft 6 in, 30 lines of 400 lb; angle derived.
+    # Maker's sheet: inflated diameter 25.7 ft, lines 25 ft 6 in, 30 lines of 400 lb; angle derived.
     phi = strength.line_angle(25.7 / 0.70, 25.5)
     assert degrees(phi) == pytest.approx(30.260, abs=5e-4)
     assert 1.0 / cos(phi) == pytest.approx(1.15774, abs=5e-6)

@@ -177,3 +177,37 @@ def test_a_platform_left_out_on_purpose_still_weighs_what_is_given(tmp_path: Pat
 def test_no_main_canopy_is_missing_data(tmp_path: Path) -> None:
     step = findings(tmp_path, lambda raw: raw["canopy"][0].update(role="drogue"))["load.suspended_per_canopy"]
     assert step.verdict is Verdict.OPEN
+
+
+def second_main(raw: Raw) -> None:
+    """Put a main before the main, both hanging open at the end; the first has no rating."""
+    drogue_first(raw, "stays")
+    raw["canopy"][0]["role"] = "main"
+
+
+def test_every_main_row_is_held_to_its_own_rating(tmp_path: Path) -> None:
+    step = findings(tmp_path, second_main)["load.suspended_per_canopy"]
+    assert (step.value, step.verdict) == (400, Verdict.OPEN)
+    assert step.reason == "data missing: canopy row 1 (main) rated_mass"
+
+    def small(raw: Raw) -> None:
+        second_main(raw)
+        raw["canopy"][0]["rated_mass"] = ["20 kg", "300 kg"]
+
+    step = findings(tmp_path, small)["load.suspended_per_canopy"]
+    assert (step.verdict, step.limit and step.limit.maximum) == (Verdict.FAIL, 300)
+
+
+def test_a_side_without_a_bound_is_said_where_the_value_lies_on_it(tmp_path: Path) -> None:
+    def aft(raw: Raw) -> None:
+        raw["item"][0]["centre"][0] = "-2 m"
+
+    def forward_alone(raw: Raw) -> None:
+        raw["limits"]["balance.forward"] = {"max": "0.1 m", "source": "rule 3"}
+
+    step = findings(tmp_path, aft, forward_alone)["balance.forward"]
+    assert step.value is not None
+    assert (step.value < 0, step.verdict) == (True, Verdict.PASS)
+    assert "the limit has no minimum" in step.cautions[0]
+    two_sided = findings(tmp_path, lambda raw: raw["item"][0]["centre"].__setitem__(0, "-0.01 m"))["balance.forward"]
+    assert not any("no minimum" in one for one in two_sided.cautions)

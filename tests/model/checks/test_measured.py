@@ -6,7 +6,7 @@ from pathlib import Path
 import pytest
 
 from model.checks.finding import Verdict
-from tests.model.checks.sample import G0, Edit, Raw, findings
+from tests.model.checks.sample import G0, Edit, Raw, drogue_first, findings
 
 RATE = {"source": "report 7", "rate": "8 m/s", "rate_mass": "900 kg", "rate_density": "1.2 kg/m3"}
 FORCE = {
@@ -53,6 +53,18 @@ def test_it_is_not_used_outside_a_tenth_of_its_mass_or_speed(tmp_path: Path, off
     step = findings(tmp_path, measured(FORCE | off))["opening.load_factor"]
     assert step.value == pytest.approx(estimate, rel=1e-12)
     assert any("measured force not used" in one for one in step.cautions)
+
+
+@pytest.mark.parametrize(("leaves", "said"), [("stays", True), ("goes at line stretch", False)])
+def test_a_measured_force_beside_a_row_that_stays_is_said(tmp_path: Path, leaves: str, said: bool) -> None:
+    def both(raw: Raw) -> None:
+        drogue_first(raw, leaves)
+        speeds = {"opening_force_mass": "910 kg", "opening_force_speed": "45 m/s"}
+        raw["canopy"][1] |= {"measured": FORCE | speeds}
+
+    step = findings(tmp_path, both)["opening.load_factor"]
+    assert not any("measured force not used" in one for one in step.cautions)
+    assert any("without the pull of canopy row 1 (drogue), which stays" in one for one in step.cautions) is said
 
 
 def test_a_measured_filling_time_leaves_one_rule(tmp_path: Path) -> None:
