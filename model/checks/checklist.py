@@ -96,7 +96,11 @@ def check_loaded(loaded: Loaded, entries: Sequence[Entry] = ()) -> Checklist:
         findings=tuple(findings),
         signatures=tuple(Signature(one.entry.who, one.entry.when, one.stale) for one in standings.signatures),
         stale=tuple(dict.fromkeys(key for key, one in settled if one.stale)),
-        notes=(*_notes(limits.limits if limits else None), *_left_out_notes(case, findings)),
+        notes=(
+            *_notes(limits.limits if limits else None),
+            *_left_out_notes(case, findings),
+            *_unused_ties(rulings, steps),
+        ),
         details=case,
         content=(rig_file.raw, limits_raw),
     )
@@ -127,6 +131,16 @@ def _left_out_notes(case: Case, findings: Sequence[Finding]) -> list[str]:
         count = sum(one.reason == reason for one in findings)
         notes.append(f"{reason} (takes {count} step{'' if count == 1 else 's'} out)")
     return notes
+
+
+def _unused_ties(rulings: Mapping[str, Ruling], steps: Sequence[Step]) -> list[str]:
+    """Limits on ties that this rig does not have: a set shared by several rigs, or a name mistyped."""
+    here = {step.limited_by for step in steps}
+    return [
+        f"the limit set has a limit for {key}, and this rig has no such tie"
+        for key in rulings
+        if key.startswith("tie.") and key not in here
+    ]
 
 
 @lru_cache(maxsize=8)

@@ -179,3 +179,18 @@ def test_a_bound_in_the_unit_of_its_step_is_the_number_that_was_written(
     limits = [one.limit for one in found.values() if one.key.startswith(key)]
     assert limits
     assert all(one is not None and one.maximum == bound for one in limits)
+
+
+def test_a_limit_for_a_tie_that_is_not_there_is_said(tmp_path: Path) -> None:
+    from model.checks.checklist import check
+
+    rigs = Path(__file__).parents[3] / "rigs"
+    text = (rigs / "limits" / "tarn-low.toml").read_text(encoding="utf-8")
+    (tmp_path / "limits").mkdir()
+    extra = '"tie.relase tie.holds" = { min = "60 lbf", source = "house rule 1" }\n'
+    at = text.index('"load.mass"')
+    (tmp_path / "limits" / "tarn-low.toml").write_text(text[:at] + extra + text[at:], encoding="utf-8")
+    rig = tmp_path / "05-pump-warm.toml"
+    rig.write_text((rigs / rig.name).read_text(encoding="utf-8"), encoding="utf-8")
+    assert any("tie.relase tie.holds" in note for note in check(rig).notes)
+    assert not any("no such tie" in note for note in check(rigs / rig.name).notes)
