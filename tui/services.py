@@ -115,7 +115,7 @@ def toml_files(folder: Path) -> tuple[Path, ...]:
     """The names of all files below a folder that may be rigs, records left out, sorted."""
     return tuple(sorted(
         path for place in folders(folder) for path in place.glob("*.toml")
-        if not path.name.startswith(".") and not path.name.endswith(".record.toml")
+        if not path.name.startswith(".") and not path.name.endswith(".record.toml") and not path.is_dir()
     ))  # fmt: skip
 
 

@@ -387,3 +387,28 @@ async def test_a_rig_whose_file_is_gone_shows_no_numbers(tmp_path: Path) -> None
         shown = text(running)
         assert "This rig's file is gone" in shown
         assert "29.43" not in shown
+
+
+async def test_what_was_said_for_want_of_steps_goes_once_the_rig_is_back(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    rig = tmp_path / "a-pump.toml"
+    running = app(tmp_path, model, watch=0.05)
+    async with running.run_test(size=(80, 24)) as pilot:
+        await settled(running)
+        await after(running, "enter")
+        kept = model.checklists.pop(rig)
+        rig.unlink()
+        for _ in range(100):
+            if "file is gone" in text(running):
+                break
+            await pilot.pause(0.05)
+        assert "There are no steps." in await after(running, "enter")
+        model.checklists[rig] = kept
+        rig.write_text("[rig]\n")
+        for _ in range(100):
+            if "of 9" in text(running):
+                break
+            await pilot.pause(0.05)
+        shown = text(running)
+    assert "of 9" in shown
+    assert "There are no steps" not in shown

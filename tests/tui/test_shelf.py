@@ -3,7 +3,7 @@
 from pathlib import Path
 
 from tests.tui.fakes import checklist
-from tui.services import Found, folders, looks_like_rigs, stamp
+from tui.services import Found, folders, looks_like_rigs, stamp, toml_files
 from tui.shelf import CANNOT_READ, Shelf
 
 ROOT = Path("/rigs")
@@ -90,3 +90,11 @@ def test_a_glance_takes_files_with_a_rig_table_alone(tmp_path: Path) -> None:
         (tmp_path / name).write_text(content)
     (tmp_path / "d.toml").mkdir()
     assert [path.relative_to(tmp_path).as_posix() for path in looks_like_rigs(tmp_path)] == ["a.toml", "sub/b.toml"]
+
+
+def test_a_folder_named_like_a_rig_is_no_file_so_that_a_rig_in_its_place_counts_as_new(tmp_path: Path) -> None:
+    (tmp_path / "a.toml").mkdir()
+    before = toml_files(tmp_path)
+    (tmp_path / "a.toml").rmdir()
+    (tmp_path / "a.toml").write_text("format = 1\n[rig]\n")
+    assert (before, toml_files(tmp_path)) == ((), (tmp_path / "a.toml",))

@@ -30,10 +30,18 @@ def _screen() -> argparse.ArgumentParser:
     )
     parser.add_argument("--version", action=_Version)
     parser.add_argument(
-        "path", nargs="?", metavar="PATH", help="a rig file or a folder (default: rigs/ here, else this folder)"
-    )
+        "path", nargs="?", type=_path, metavar="PATH",
+        help="a rig file or a folder (default: rigs/ here, else this folder)",
+    )  # fmt: skip
     parser.set_defaults(command="screen")
     return parser
+
+
+def _path(word: str) -> str:
+    """A path as typed. An empty one, from a variable that is not set, would mean the folder one stands in."""
+    if not word:
+        raise argparse.ArgumentTypeError("an empty path")
+    return word
 
 
 class _Version(argparse.Action):
@@ -57,7 +65,7 @@ def _commands() -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(prog="rigslate", formatter_class=_formatter, allow_abbrev=False)
     commands = parser.add_subparsers(dest="command", required=True)
     check = _command(commands, "check", "check every rig file at or below each PATH")
-    check.add_argument("paths", nargs="+", metavar="PATH", help="a rig file or a folder")
+    check.add_argument("paths", nargs="+", type=_path, metavar="PATH", help="a rig file or a folder")
     form = check.add_mutually_exclusive_group()
     form.add_argument("--json", action="store_true", help="print one JSON object")
     form.add_argument("--brief", action="store_true", help="print one line a rig")
@@ -65,14 +73,15 @@ def _commands() -> argparse.ArgumentParser:
     check.add_argument("--computed", action="store_true", help="leave the inspected steps out")
     _units(check)
     working = _command(commands, "working", "print the lines behind one step")
-    working.add_argument("rig", metavar="RIG", help="a rig file")
+    working.add_argument("rig", type=_path, metavar="RIG", help="a rig file")
     working.add_argument("key", metavar="KEY", help="a step key, as 'rigslate check' prints it, or load-path")
     _units(working)
     report = _command(commands, "report", "report on one rig or on every rig in a folder")
-    report.add_argument("path", metavar="PATH", help="a rig file or a folder")
+    report.add_argument("path", type=_path, metavar="PATH", help="a rig file or a folder")
     report.add_argument(
-        "-o", dest="output", metavar="FILE", help="where to: FILE.txt, .md or .html (default: text, printed)"
-    )
+        "-o", dest="output", type=_path, metavar="FILE",
+        help="where to: FILE.txt, .md or .html (default: text, printed)",
+    )  # fmt: skip
     report.add_argument("--working", action="store_true", help="add the lines behind every computed step")
     _units(report)
     return parser

@@ -23,6 +23,7 @@ if TYPE_CHECKING:
     from model.checks.finding import Finding
 
 GONE = "This rig's file is gone from the folder."
+NO_STEPS, NO_STEPS_YET = "There are no steps.", "There are no steps yet."
 RELEASES_NOTHING = "This releases nothing: local rules and licensed riggers decide."
 
 
@@ -95,6 +96,8 @@ class StepsScreen(BehindScreen):
         if entry.checklist is self._checklist:
             return
         self._checklist = entry.checklist
+        if self._message[0] in (GONE, NO_STEPS, NO_STEPS_YET):
+            self.hush()
         self._answered.clear()
         keys = [finding.key for finding in self.findings]
         last = self._last
@@ -243,7 +246,7 @@ class StepsScreen(BehindScreen):
         self._written = None
         here = self.finding
         if here is None:
-            self.say("There are no steps yet." if self.under_way else "There are no steps.")
+            self.say(NO_STEPS_YET if self.under_way else NO_STEPS)
         elif stepping.is_open(here, self._answered):
             self.say("This is the only open step.")
         else:

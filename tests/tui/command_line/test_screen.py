@@ -24,7 +24,10 @@ def test_without_a_path_the_folder_rigs_is_taken(tmp_path, capsys, monkeypatch):
     assert capsys.readouterr().err.startswith("rigs: no rig file")
 
 
-@pytest.mark.parametrize("words", [["a", "b"], ["--nosuch"], ["check"], ["check", "--json", "--brief", "x"]])
+@pytest.mark.parametrize("words", [
+    ["a", "b"], ["--nosuch"], ["check"], ["check", "--json", "--brief", "x"],
+    [""], ["check", ""], ["check", "a.toml", ""], ["working", "", "load.mass"], ["report", ""],
+])
 def test_a_wrong_call_ends_with_2(words, capsys):
     with pytest.raises(SystemExit) as ended:
         main(words)
