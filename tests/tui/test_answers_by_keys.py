@@ -4,8 +4,9 @@ from collections.abc import Iterator
 from pathlib import Path
 
 from textual import events
+from textual.widgets import Input
 
-from tests.tui.fakes import MORNING, after, app, services, settled, until
+from tests.tui.fakes import MORNING, after, app, press, services, settled, until
 from tui.app import RigslateApp
 
 TIES = ("down", "down")
@@ -239,3 +240,34 @@ async def test_a_window_made_too_small_and_large_again_keeps_the_field(tmp_path:
         await until(running, "remark, why: sla")
         await after(running, *"ck", "enter", *"AM", "enter")
     assert model.entries[0][1].remark == "slack"
+
+
+async def test_enter_beside_a_field_left_by_tab_leads_back_to_what_was_typed(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    running = app(tmp_path / "a-pump.toml", model)
+    async with running.run_test(size=(80, 24)):
+        await settled(running)
+        assert "remark, why: sla" in await after(running, "end", "f", "enter", *"sla", "tab", "enter")
+        await after(running, *"ck", "enter", *"AM", "enter")
+    assert model.entries[0][1].remark == "slack"
+
+
+async def test_a_field_takes_nothing_while_the_window_is_too_small_to_show_it(tmp_path: Path) -> None:
+    model = services(tmp_path)
+    running = app(tmp_path / "a-pump.toml", model)
+    async with running.run_test(size=(80, 24)) as pilot:
+        await settled(running)
+        await after(running, "end", "f", "enter", *"sla")
+        await pilot.resize_terminal(40, 10)
+        await until(running, "rigslate needs 60 x 20")
+        field = running.screen.query_one(Input)
+        # The terminal may be quicker than the screen's hiding of the field.
+        running.screen.set_focus(field)
+        field.focus()
+        await press(running, "q", "backspace", "enter")
+        field.post_message(events.Paste("pasted"))
+        await press(running, "z")
+        await pilot.resize_terminal(80, 24)
+        assert "remark, why: sla" in await until(running, "remark, why:")
+        assert field.value == "sla"
+    assert model.entries == []

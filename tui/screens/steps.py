@@ -232,6 +232,10 @@ class StepsScreen(BehindScreen):
         inspected = finding is not None and finding.inspection is not None
         if self._writing or (inspected and self.slate.repeated):
             return
+        if self._asking is not None:
+            # The field was left by Tab: back to it, with what was typed.
+            self.action_pane(3)
+            return
         if self._draft is not None:
             self._go_on()
             return

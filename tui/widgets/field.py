@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import ClassVar
 
+from textual import events
 from textual.binding import Binding, BindingType
 from textual.widgets import Input
 
@@ -26,3 +27,24 @@ class Field(Input, inherit_bindings=False):
         super().__init__(compact=True, select_on_focus=False, id=id, max_length=max_length)
         # A steady cursor: blinking tells nothing and costs repaints.
         self.cursor_blink = False
+
+    def check_action(self, action: str, parameters: tuple[object, ...]) -> bool | None:
+        """No editing and no Enter while the window is too small to show the field."""
+        return not self._unseen
+
+    def on_key(self, event: events.Key) -> None:
+        """Take no letter while the window is too small to show it."""
+        self._pass_over(event)
+
+    def on_paste(self, event: events.Paste) -> None:
+        """Take no pasted text while the window is too small to show it."""
+        self._pass_over(event)
+
+    @property
+    def _unseen(self) -> bool:
+        return self.screen.has_class("-small")
+
+    def _pass_over(self, event: events.Event) -> None:
+        if self._unseen:
+            event.prevent_default()
+            event.stop()
