@@ -24,6 +24,7 @@ if TYPE_CHECKING:
     from model.rig.entry import Entry
 
 LEFT_OUT = "left out on purpose, "
+NO_INSPECTIONS = "the limit set asks for no inspection: computed steps alone"
 
 
 def check(path: Path) -> Checklist:
@@ -119,8 +120,9 @@ def _taken_keys(limits: LimitFile | None, computed: set[str]) -> list[InputProbl
 
 def _notes(limits: LimitSet | None) -> tuple[str, ...]:
     if limits is None:
-        return ("no limit set is named in the rig file: nothing can PASS",)
-    return (limits.set.note,) if limits.set.note else ()
+        return ("no limit set is named in the rig file: the rig can't PASS",)
+    notes = (limits.set.note,) if limits.set.note else ()
+    return notes if limits.inspection else (*notes, NO_INSPECTIONS)
 
 
 def _left_out_notes(case: Case, findings: Sequence[Finding]) -> list[str]:

@@ -3,7 +3,7 @@ from pathlib import Path
 
 import pytest
 
-from model.checks.checklist import check
+from model.checks.checklist import NO_INSPECTIONS, check
 from model.checks.finding import COMPUTED_ALONE, Checklist, Finding, Kind, Verdict, computed_alone
 from model.rig import record
 from model.rig.entry import draft
@@ -206,3 +206,8 @@ def test_losing_all_airspeed_before_the_ramp_is_an_error(tmp_path: Path) -> None
 
     with pytest.raises(InputError, match="airspeed"):
         checklist(tmp_path, stopped)
+
+
+def test_a_limit_set_that_asks_for_no_inspection_says_so(tmp_path: Path) -> None:
+    assert NO_INSPECTIONS in checklist(tmp_path).notes
+    assert NO_INSPECTIONS not in checklist(tmp_path, limits=asked).notes

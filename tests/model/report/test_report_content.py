@@ -99,7 +99,7 @@ def test_a_rig_without_reference_revision_limits_and_almost_all_else_is_reported
     rig = one(check(path), workings=True)
     assert rig.title == "Bare"
     assert "limits: none" in rig.page_head[1]
-    assert Words("no limit set is named in the rig file: nothing can PASS") in rig.first
+    assert Words("no limit set is named in the rig file: the rig can't PASS") in rig.first
     curves = {section.title: section.blocks for section in rig.sections}["Curves"]
     assert len(curves) == 1
     assert isinstance(curves[0], Words)
