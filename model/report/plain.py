@@ -5,6 +5,7 @@ from __future__ import annotations
 from itertools import groupby
 from textwrap import shorten, wrap
 
+from model.checks.checklist import NO_INSPECTIONS
 from model.checks.finding import COMPUTED_ALONE, Checklist, Finding, Kind, Verdict
 from model.checks.registry import group_title
 from model.quantity import UnitSystem
@@ -72,7 +73,7 @@ def brief_line(checklist: Checklist) -> str:
     worst = checklist.worst
     least = f", least margin {_signed_percent(worst)} at {worst.key}" if worst else ""
     counts = ", ".join(f"{checklist.count(one)} {one.lower()}" for one in (Verdict.PASS, Verdict.FAIL, Verdict.OPEN))
-    alone = f", {COMPUTED_ALONE}" if COMPUTED_ALONE in checklist.notes else ""
+    alone = "".join(f", {note}" for note in (COMPUTED_ALONE, NO_INSPECTIONS) if note in checklist.notes)
     return f"{checklist.verdict}  {checklist.file}  {checklist.name}: {counts}{least}{alone}"
 
 

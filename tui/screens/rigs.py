@@ -60,9 +60,10 @@ class RigsScreen(BaseScreen):
         """Draw the shelf."""
         chars, entries = self.chars, self.entries
         self.put("head", view.head(str(self.slate.root), entries, self.slate.book.left, cells, chars))
-        self.put("rule", [pane_rule([(1, "rigs", cells)], self._pane, chars)])
         self.put("columns", [view.column_heads(cells, chars)])
-        self.put("middle", self._shelf(cells))
+        shelf = self._shelf(cells)
+        self.put("middle", shelf)
+        self.put("rule", [pane_rule([(1, self._in_sight(len(shelf)), cells)], self._pane, chars)])
         self.put("foot-rule", [pane_rule([(2, "this rig", cells)], self._pane, chars)])
         here = self.here
         under_way = here is not None and self.slate.book.under_way(here.path)
@@ -86,6 +87,11 @@ class RigsScreen(BaseScreen):
             marked = entry.path == self._here
             rows.append(view.shelf_row(entry, here=marked, under_way=under_way, cells=cells, chars=self.chars))
         return rows
+
+    def _in_sight(self, shown: int) -> str:
+        """The title of the shelf, with which rigs are in sight where not all are."""
+        count = len(self.entries)
+        return "rigs" if shown >= count else f"rigs {self._top + 1} to {self._top + shown} of {count}"
 
     def _empty(self, cells: int) -> Rows:
         if self.slate.folder_problems:

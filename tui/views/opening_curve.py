@@ -81,6 +81,7 @@ def said_rows(seen: Seen, cells: int, chars: Charset, *, flowing: bool, legend: 
     drawn = seen.shot.charts.charts[seen.plot]
     said = [_legend(drawn, chars, moved=seen.moved)] if legend else []
     said += [_shorter(text) for text in drawn.said]
+    said += _beyond(drawn.chart)
     if seen.plot == 0:
         said += _limit_said(seen)
     if seen.moved and seen.plot < len(seen.filed.charts.charts):
@@ -103,6 +104,14 @@ def _flowing(said: Sequence[str], cells: int, tone: Tone) -> list[Row]:
         else:
             lines.append(text)
     return _listed(lines, cells, tone)
+
+
+def _beyond(chart: Chart) -> list[str]:
+    """The limits that the marked peak lies beyond, in words: a sign on the curve alone is easily overlooked."""
+    if not chart.marks:
+        return []
+    peak = chart.marks[0].y
+    return [f"OVER the limit {bound.text}" for bound in chart.limits if bound.is_broken_by(peak)]
 
 
 def _shorter(text: str) -> str:
