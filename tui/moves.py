@@ -31,11 +31,6 @@ class Moves:
         return dict(self._values)
 
     @property
-    def by_loc(self) -> Mapping[Loc, Input]:
-        """The inputs by place in the file."""
-        return {one.loc: one for one in self.inputs}
-
-    @property
     def input(self) -> Input | None:
         """The chosen input."""
         return self.inputs[self.chosen] if self.inputs else None

@@ -11,6 +11,7 @@ from model.checks.missing import Missing, need, row
 from model.checks.rates import Rates
 from model.checks.term import Term, derive, least, read, read_count, total
 from model.physics import balance, cushion
+from model.physics.formula import CONSTANTS
 from model.quantity import Quantity
 from model.rig.rig import Rig
 
@@ -123,6 +124,6 @@ class Cushioning:
     def _net_limit(self) -> float | None:
         """The least net deceleration that the limit and every fragility allow, in g0."""
         factor = self._bound("landing.fragility") or 1.0
-        allowed = [item.fragility.value / 9.80665 / factor for item in self.rig.item if item.fragility]
+        allowed = [item.fragility.value / CONSTANTS["g0"] / factor for item in self.rig.item if item.fragility]
         most = self._bound("landing.deceleration")
         return min([*allowed, *([most] if most is not None else [])], default=None)

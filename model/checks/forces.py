@@ -61,12 +61,10 @@ class Forces:
         """Cautions for measured figures that stand but are not used."""
         found = []
         for one in self.motions.rows:
+            if one.unused_rate:
+                found.append(one.unused_rate)
             figures = one.row.measured
-            if figures is None:
-                continue
-            if figures.rate is not None and not one.measured_rate_used:
-                found.append(f"{one.name}: measured rate not used, its mass is more than 10 % from this one's")
-            if figures.opening_force is not None and self.measured(one) is None:
+            if figures is not None and figures.opening_force is not None and self.measured(one) is None:
                 found.append(
                     f"{one.name}: measured force not used, its mass or speed is more than 10 % from this one's"
                 )
@@ -107,17 +105,13 @@ class Forces:
 
     def plain(self) -> Term:
         """The same as `opening` without the opening coefficient; for the working."""
-        both = [
-            term
-            for number in range(sum(len(one.fillings) for one in self.motions.rows))
-            for term in self.motions.both(
-                lambda motion, number=number: motion.opening_force_plain[number, 0],  # type: ignore[misc]
-                f"f{number + 1}",
-                f"filling {number + 1} without Cx",
-                "force",
-            )
-        ]
+        fillings = range(sum(len(one.fillings) for one in self.motions.rows))
+        both = [term for number in fillings for term in self._plain_filling(number)]
         return largest(both, "f", "largest force without the opening coefficient")
+
+    def _plain_filling(self, number: int) -> list[Term]:
+        name = f"filling {number + 1} without Cx"
+        return self.motions.both(lambda motion: motion.opening_force_plain[number, 0], f"f{number + 1}", name, "force")
 
     def measured_all(self) -> bool:
         """Whether forces rest on measured figures: a force for every row, or a time for every filling."""

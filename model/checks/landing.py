@@ -5,6 +5,7 @@ from __future__ import annotations
 from model.checks.balance import smaller_side
 from model.checks.case import Case
 from model.checks.cushions import CANNOT_STOP
+from model.checks.masses import weighted_mean
 from model.checks.missing import CannotJudge, Failed, Missing, need, row
 from model.checks.step import Outcome, Step
 from model.checks.term import LESS, Procedure, Term, combine, derive, known, least, read
@@ -77,7 +78,7 @@ def _centre(case: Case) -> Outcome:
         )
     offsets = []
     for axis in (0, 1):
-        how = Procedure("sum of crush force x coordinate / sum of crush force", _weighted, "statics")
+        how = Procedure("sum of crush force x coordinate / sum of crush force", weighted_mean, "statics")
         centre = combine(
             how,
             [*stacks.forces, *(place[axis] for place in places)],
@@ -92,11 +93,6 @@ def _centre(case: Case) -> Outcome:
     how = Procedure("d = hypot(dx, dy)", lambda dx, dy: (dx * dx + dy * dy) ** 0.5, "geometry")
     meaning = "crush-force centre from the centre of gravity above it"
     return _geometry(case, combine(how, offsets, "d", meaning, "length", offsets[0].unit))
-
-
-def _weighted(*values: float) -> float:
-    half = len(values) // 2
-    return sum(force * x for force, x in zip(values[:half], values[half:], strict=True)) / sum(values[:half])
 
 
 def speed_across(case: Case) -> Term:

@@ -13,10 +13,11 @@ SCALED = Procedure("count x mass of each", lambda mass, count: mass * count, "de
 MOMENTS = "sum of mass x coordinate / sum of mass"
 
 
-def _centre(*values: float) -> float:
+def weighted_mean(*values: float) -> float:
+    """Mean of the second half of some numbers, weighted by the first: a coordinate of a centre."""
     half = len(values) // 2
-    masses, places = values[:half], values[half:]
-    return sum(m * x for m, x in zip(masses, places, strict=True)) / sum(masses)
+    weights, places = values[:half], values[half:]
+    return sum(w * x for w, x in zip(weights, places, strict=True)) / sum(weights)
 
 
 def _centre_without(*values: float) -> float:
@@ -26,7 +27,7 @@ def _centre_without(*values: float) -> float:
     return (mass * place - sum(m * x for m, x in zip(gone, places, strict=True))) / (mass - sum(gone))
 
 
-CENTRE = Procedure(MOMENTS, _centre, "statics")
+CENTRE = Procedure(MOMENTS, weighted_mean, "statics")
 CENTRE_WITHOUT = Procedure(
     "(mass x coordinate - sum of part mass x its coordinate) / (mass - sum of part masses)", _centre_without, "statics"
 )

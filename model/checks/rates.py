@@ -35,11 +35,7 @@ class Rates:
     @property
     def cautions(self) -> tuple[str, ...]:
         """Cautions for measured rates that stand but are not used."""
-        return tuple(
-            f"{one.name}: measured rate not used, its mass is more than 10 % from this one's"
-            for one in self.open_at_end
-            if one.row.measured is not None and one.row.measured.rate is not None and not one.measured_rate_used
-        )
+        return tuple(one.unused_rate for one in self.open_at_end if one.unused_rate)
 
     def steady(self, areas: Sequence[Term], of: str) -> Term:
         """Steady rate of descent in the air of the zone under some drag areas."""

@@ -103,6 +103,14 @@ class CanopyRow:
             return False
         return abs(measured.rate_mass.value - self.mass.value) <= NEAR * measured.rate_mass.value
 
+    @property
+    def unused_rate(self) -> str:
+        """What to say of a measured rate that stands and is not used; empty otherwise."""
+        measured = self.row.measured
+        if measured is None or measured.rate is None or self.measured_rate_used:
+            return ""
+        return f"{self.name}: measured rate not used, its mass is more than 10 % from this one's"
+
     @cached_property
     def full_area(self) -> Term:
         """Drag area of the whole row, full."""

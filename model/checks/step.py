@@ -85,9 +85,9 @@ def bound_in_unit(value: float, unit: str) -> float:
 
 def own_limit(unit: str, least: Quantity | None = None, most: Quantity | None = None) -> Limit:
     """A limit written in the rig file."""
-    shown = (most or least).unit if (most or least) else None  # type: ignore[union-attr]
+    written = most or least
     low, high = (bound_in_unit(one.value, unit) if one else None for one in (least, most))
-    return Limit(low, high, "rig file", shown)
+    return Limit(low, high, "rig file", written.unit if written else None)
 
 
 def tighter(limits: list[Limit]) -> Limit | None:

@@ -75,7 +75,8 @@ def given(quantity: Quantity, symbol: str, meaning: str, origin: str) -> Term:
         str(quantity.dimension),
         quantity.unit,
         origin,
-        tolerance=quantity.tolerance, relative=quantity.relative,
+        tolerance=quantity.tolerance,
+        relative=quantity.relative,
         from_file=True,
     )
 

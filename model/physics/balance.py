@@ -180,4 +180,4 @@ def mass_per_canopy(suspended: Real, count: Real) -> Real:
 )
 def weight(mass: Real) -> Real:
     """Weight of a mass, N."""
-    return mass * 9.80665
+    return mass * _G0

@@ -215,4 +215,4 @@ def in_handbook_class(diameter: float, loading: float) -> bool:
 )
 def load_factor(force: Real, mass: Real) -> Real:
     """Opening force over weight, in g0."""
-    return force / (mass * 9.80665)
+    return force / (mass * _G0)

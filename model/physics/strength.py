@@ -7,7 +7,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from model.physics.formula import formula
+from model.physics.formula import CONSTANTS, formula
 from model.physics.types import Real
 
 INFLATED_RADIUS = 0.35
@@ -277,4 +277,4 @@ def tie_strength_most(strands: Real, strength: Real) -> Real:
 )
 def fragility_ratio(fragility: Real, net: Real) -> Real:
     """Fragility, m/s2, over the net deceleration in g0."""
-    return fragility / (net * 9.80665)
+    return fragility / (net * CONSTANTS["g0"])

@@ -9,6 +9,7 @@ from textual.containers import Horizontal
 from textual.widget import Widget
 
 from model.checks.finding import Finding
+from tui.caution import CAUTION
 from tui.commands import OPENING
 from tui.glyphs import clip
 from tui.moves import step_text
@@ -23,7 +24,7 @@ from tui.widgets.page import Page
 _WIDE = 72
 """Columns from which lines and curve stand side by side."""
 CAUTIONS = (
-    "An estimate: local rules, the technical manual and licensed riggers go first.",
+    CAUTION,
     "An estimate: rules, manual and licensed riggers go first.",
 )
 _TALL = 22
